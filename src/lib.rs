@@ -1,0 +1,8 @@
+//! x
+pub mod numerics;
+pub mod quantities;
+pub mod documents;
+pub mod materials;
+pub mod models;
+pub mod designs;
+pub mod devices;

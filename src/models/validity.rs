@@ -1,0 +1,1 @@
+//! Where the ladder's assumptions end: caveats for given inputs, as data.

@@ -1,0 +1,3 @@
+//! The test suite: one binary, one module a question.
+
+mod quantities;
