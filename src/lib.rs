@@ -1,4 +1,4 @@
-//! x
+//! placeholder
 pub mod numerics;
 pub mod quantities;
 pub mod documents;
@@ -6,3 +6,6 @@ pub mod materials;
 pub mod models;
 pub mod designs;
 pub mod devices;
+pub mod studies;
+pub mod presentation;
+pub mod cli;

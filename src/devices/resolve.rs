@@ -71,13 +71,6 @@ fn magnetization(word: Option<MagnetizationWord>) -> Magnetization {
     }
 }
 
-/// Where an element of the design has gone.
-#[derive(Clone, Copy)]
-enum Gone {
-    Position(Position),
-    Contact(usize),
-}
-
 impl Work<'_> {
     fn add<Q: Measured>(
         &mut self,
@@ -630,7 +623,7 @@ impl Work<'_> {
         let last = parts.len() - 1;
         let mut elements = Vec::new();
         let mut names = Vec::new();
-        let mut gone: Vec<Option<Gone>> = vec![None; parts.len()];
+        let mut gone: Vec<Option<Position>> = vec![None; parts.len()];
         let (mut left, mut right) = (end_plan(design.left), end_plan(design.right));
         let mut contacts: Vec<(usize, usize, usize)> = Vec::new();
         let mut previous: Option<usize> = None;
@@ -655,7 +648,6 @@ impl Work<'_> {
                     (&parts[before], before_name, &parts[i], name),
                 );
                 contacts.push((elements.len(), before, i));
-                gone[(before + 1).min(last)] = spec.map(|_| Gone::Contact(elements.len()));
                 elements.push(ElementPlan::Interface(interface.unwrap_or(InterfacePlan {
                     resistance: InterfaceResistancePlan::Zero,
                     asymmetry: None,
@@ -674,7 +666,7 @@ impl Work<'_> {
                 elements.push(ElementPlan::Layer(*plan));
                 Position::Element(elements.len() - 1)
             };
-            gone[i] = Some(Gone::Position(position));
+            gone[i] = Some(position);
             names.push(name.clone());
             previous = Some(i);
         }
@@ -687,15 +679,12 @@ impl Work<'_> {
         names: Vec<Named>,
         left: EndPlan,
         right: EndPlan,
-        gone: &[Option<Gone>],
+        gone: &[Option<Position>],
         contacts: &[(usize, usize, usize)],
     ) -> Option<Vertical> {
         let design = self.design;
         let parts = &design.parts;
-        let position = |i: usize| match gone.get(i) {
-            Some(Some(Gone::Position(p))) => Some(*p),
-            _ => None,
-        };
+        let position = |i: usize| gone.get(i).copied().flatten();
         let is_f = |i: usize| matches!(parts[i], Part::Ferromagnet(_));
         let channel = position(design.channel)?;
         let before = (0..design.channel).rev().find(|i| is_f(*i));

@@ -419,3 +419,63 @@ impl Vertical {
         }
     }
 }
+
+impl Vertical {
+    /// Whether the design or a record states γ of the interface at an element.
+    #[must_use]
+    pub fn states_asymmetry(&self, element: usize) -> bool {
+        matches!(
+            self.elements.get(element),
+            Some(ElementPlan::Interface(InterfacePlan { asymmetry: Some(_), .. }))
+        )
+    }
+}
+
+impl Vertical {
+    /// The two layers that an interface element stands between.
+    #[must_use]
+    pub fn neighbours(&self, element: usize) -> [Position; 2] {
+        let left = element.checked_sub(1).map_or(Position::LeftEnd, Position::Element);
+        let right = if element + 1 < self.elements.len() {
+            Position::Element(element + 1)
+        } else {
+            Position::RightEnd
+        };
+        [left, right]
+    }
+
+    /// Plan of the layer at a position.
+    #[must_use]
+    pub fn layer_plan(&self, at: Position) -> Option<&LayerPlan> {
+        match at {
+            Position::LeftEnd => match &self.left {
+                EndPlan::SemiInfinite(plan) => Some(plan),
+                _ => None,
+            },
+            Position::RightEnd => match &self.right {
+                EndPlan::SemiInfinite(plan) => Some(plan),
+                _ => None,
+            },
+            Position::Element(i) => match self.elements.get(i) {
+                Some(ElementPlan::Layer(plan)) => Some(plan),
+                _ => None,
+            },
+        }
+    }
+
+    /// Whether a ferromagnet stands at a position.
+    #[must_use]
+    pub fn is_ferromagnet(&self, at: Position) -> bool {
+        self.layer_plan(at).is_some_and(|plan| plan.asymmetry.is_some())
+    }
+
+    /// Every layer from left to right, end media included.
+    #[must_use]
+    pub fn layers(&self) -> Vec<Position> {
+        std::iter::once(Position::LeftEnd)
+            .chain((0..self.elements.len()).map(Position::Element))
+            .chain(std::iter::once(Position::RightEnd))
+            .filter(|at| self.layer_plan(*at).is_some())
+            .collect()
+    }
+}

@@ -15,9 +15,12 @@ use super::tree::{Node, Value};
 pub struct Faults(Rc<RefCell<Vec<Fault>>>);
 
 impl Faults {
-    /// Adds one.
+    /// Adds one, unless it is there already: a file that is read twice is complained of once.
     pub fn push(&self, fault: Fault) {
-        self.0.borrow_mut().push(fault);
+        let mut all = self.0.borrow_mut();
+        if !all.contains(&fault) {
+            all.push(fault);
+        }
     }
 
     /// Takes them all out, ordered by place within each source.

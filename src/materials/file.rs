@@ -6,7 +6,7 @@ use crate::documents::tree::{Node, Value};
 use crate::quantities::kind::{self, Kind};
 use crate::quantities::spread::Spread;
 use crate::quantities::text::Reading;
-use crate::quantities::unit::Context;
+use crate::quantities::unit::{Context, parse_unit};
 
 use super::property::{PROPERTIES, Property, property_named};
 use super::record::{
@@ -132,6 +132,14 @@ fn read_interface(top: &Reader<'_>, from_user: bool, _faults: &Faults) -> Option
 
 struct Owner {
     from_user: bool,
+}
+
+/// Whether a text is a finite number, perhaps followed by a unit.
+fn is_coefficient(text: &str) -> bool {
+    let text = text.trim().replace('\u{2212}', "-");
+    let (number, unit) = text.split_once(' ').unwrap_or((&text, ""));
+    number.parse::<f64>().is_ok_and(f64::is_finite)
+        && (unit.is_empty() || parse_unit(unit, &Context::default()).is_ok())
 }
 
 const TEMPERATURE_WORDS: &[(&str, TemperatureFrom)] = &[
@@ -427,16 +435,12 @@ impl Owner {
                 .collect()
         };
         let range = pairs("range");
-        let coefficients = pairs("coefficients")
-            .into_iter()
-            .filter_map(|(k, text)| match text.replace('\u{2212}', "-").parse::<f64>() {
-                Ok(n) if n.is_finite() => Some((k, n)),
-                _ => {
-                    conflict(r, "coefficients", &format!("`{k}` = \"{text}\" is not a number"), "coefficients are plain numbers in the units that the formula states");
-                    None
-                }
-            })
-            .collect();
+        let coefficients = pairs("coefficients");
+        for (k, text) in &coefficients {
+            if !is_coefficient(text) {
+                conflict(r, "coefficients", &format!("`{k}` = \"{text}\" is not a number with or without unit"), "write, for example, \"0.711\" or \"9.2e16 /cm³\"");
+            }
+        }
         r.finish();
         Some(LawRecord {
             common: common?,

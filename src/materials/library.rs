@@ -403,3 +403,11 @@ pub fn commons_of_interface(i: &InterfaceEntry) -> Vec<&Common> {
 pub fn class_of(word: &str) -> Option<Class> {
     Class::WORDS.iter().find(|(w, _)| *w == word).map(|(_, c)| *c)
 }
+
+impl Library {
+    /// The shipped references, as BibTeX text.
+    #[must_use]
+    pub fn shipped_references() -> &'static str {
+        REFERENCES
+    }
+}

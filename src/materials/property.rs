@@ -40,7 +40,7 @@ pub static PROPERTIES: &[Property] = &[
     property("resistivity", &kind::RESISTIVITY, true, Use::Model),
     property("conductivity", &kind::CONDUCTIVITY, true, Use::Model),
     property("spin_diffusion_length", &kind::SPIN_DIFFUSION_LENGTH, true, Use::Model),
-    property("resistivity_length_product", &kind::RHO_LAMBDA, true, Use::Model),
+    property("resistivity_length_product", &kind::RHO_LAMBDA, false, Use::Model),
     property("spin_lifetime", &kind::SPIN_LIFETIME, true, Use::Reference),
     property("diffusion_constant", &kind::DIFFUSION, true, Use::Reference),
     property("mobility", &kind::MOBILITY, true, Use::Reference),

@@ -255,8 +255,8 @@ pub struct LawRecord {
     pub form: String,
     /// The formula, readable.
     pub formula: String,
-    /// Coefficients, in order.
-    pub coefficients: Vec<(String, f64)>,
+    /// Coefficients in order, as written, each a number with the unit that the formula takes it in.
+    pub coefficients: Vec<(String, String)>,
     /// Range per variable, as written.
     pub range: Vec<(String, String)>,
     /// Stated error, as written.

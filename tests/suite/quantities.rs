@@ -454,13 +454,15 @@ fn a_bare_number_is_for_pure_numbers() {
 
 #[test]
 fn an_interval_keeps_its_numbers_as_typed() {
-    let (low, high, low_text, high_text, unit) =
-        read_interval("1 .. 1e4 Ω µm²", &kind::RESISTANCE_AREA).unwrap();
+    let got = read_interval("1 .. 1e4 Ω µm²", &kind::RESISTANCE_AREA).unwrap();
     assert_eq!(
-        [low.to_bits(), high.to_bits()],
+        [got.low.to_bits(), got.high.to_bits()],
         [1e-12_f64.to_bits(), 1e-8_f64.to_bits()]
     );
-    assert_eq!([low_text, high_text, unit], ["1", "1e4", "Ω µm²"]);
+    assert_eq!(
+        [got.low_text, got.high_text, got.unit_text],
+        ["1", "1e4", "Ω µm²"]
+    );
     assert!(read_interval("1 nm .. 2 nm", &kind::THICKNESS).is_ok());
     for (text, want) in [
         (

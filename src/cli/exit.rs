@@ -1,0 +1,38 @@
+//! Exit codes, one place.
+
+use std::io;
+use std::process::ExitCode;
+
+/// How a run ended.
+#[derive(Clone, Copy, PartialEq, Eq, Debug)]
+pub enum Exit {
+    /// 0: answered, caveats included.
+    Answered,
+    /// 1: the design fails its goals and `--strict` was given.
+    GoalsNotMet,
+    /// 2: bad input.
+    BadInput,
+    /// 3: the answer could not be written.
+    CannotWrite,
+}
+
+impl From<Exit> for ExitCode {
+    fn from(exit: Exit) -> Self {
+        Self::from(match exit {
+            Exit::Answered => 0,
+            Exit::GoalsNotMet => 1,
+            Exit::BadInput => 2,
+            Exit::CannotWrite => 3,
+        })
+    }
+}
+
+/// The exit after writing: a reader that went away is no failure.
+#[must_use]
+pub fn of_write(written: &io::Result<()>, otherwise: Exit) -> Exit {
+    match written {
+        Ok(()) => otherwise,
+        Err(e) if e.kind() == io::ErrorKind::BrokenPipe => otherwise,
+        Err(_) => Exit::CannotWrite,
+    }
+}

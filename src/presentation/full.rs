@@ -1,0 +1,352 @@
+//! The full answer: the short one, then the design as understood, its expansion into a stack, spin
+//! resistances and their ratios, potentials, windows, check values, every finding, and the sources.
+
+use comfy_table::{CellAlignment, ContentArrangement, Table, presets};
+
+use crate::devices::inputs::Input;
+use crate::devices::provenance::Origin;
+use crate::devices::vertical::{EndPlan, Position};
+use crate::models::ladder::{Element, End, Face, Layer, Magnetization};
+use crate::quantities::dimensions::Measured;
+use crate::quantities::kind::Scale;
+use crate::quantities::print::{with_digits, with_spread};
+use crate::quantities::spread::Spread;
+use crate::studies::assess::Assessment;
+
+use super::lines::{labelled, marked, wrap};
+use super::numbers::{area, factor, percent, voltage};
+use super::summary::{self, position_name, share};
+use super::wording::{decided, finding, mark, severity_mark};
+
+/// A table of the house: no vertical rules, a line under the head.
+#[must_use]
+pub fn table(head: &[&str], width: usize, right: &[usize]) -> Table {
+    let mut t = Table::new();
+    t.load_style(presets::UTF8_HORIZONTAL_ONLY)
+        .set_content_arrangement(ContentArrangement::Dynamic)
+        .set_width(u16::try_from(width).unwrap_or(u16::MAX))
+        .set_header(head.to_vec());
+    for column in right {
+        if let Some(c) = t.column_mut(*column) {
+            c.set_cell_alignment(CellAlignment::Right);
+        }
+    }
+    t
+}
+
+/// The lines of a table without trailing blanks and without the outer rules.
+#[must_use]
+pub fn table_lines(t: &Table) -> Vec<String> {
+    let lines: Vec<String> = t.lines().map(|l| l.trim_end().to_owned()).collect();
+    let rule = |l: &String| !l.is_empty() && l.chars().all(|c| "─═╌┄┈-= ".contains(c));
+    let inner: Vec<String> =
+        lines.iter().enumerate().filter(|(i, l)| !(rule(l) && (*i == 0 || *i + 1 == lines.len()))).map(|(_, l)| l.clone()).collect();
+    // A rule between every two rows would double the length: keep the one under the head.
+    let mut seen = false;
+    inner
+        .into_iter()
+        .filter(|l| {
+            if rule(l) {
+                let first = !seen;
+                seen = true;
+                first
+            } else {
+                true
+            }
+        })
+        .collect()
+}
+
+fn heading(text: &str) -> Vec<String> {
+    vec![String::new(), text.to_owned()]
+}
+
+fn plain(text: &str) -> String {
+    text.replace('\u{a0}', " ")
+}
+
+/// Value and spread of an input, `unknown` said where it is.
+#[must_use]
+pub fn value_of(input: &Input) -> String {
+    let r = &input.reading;
+    let text = with_spread(r.si, &r.spread, input.kind.scale);
+    match r.spread {
+        Spread::Unknown => format!("{text} ± unknown"),
+        _ => text,
+    }
+}
+
+fn source_of(a: &Assessment, input: &Input) -> String {
+    match &input.provenance.origin {
+        Origin::Design { note, overrides, .. } => match (overrides, note) {
+            (true, Some(note)) => format!("design, in place of the library: {note}"),
+            (true, None) => "design, in place of the library".to_owned(),
+            (false, _) => "design".to_owned(),
+        },
+        Origin::Record { id, source, decided: d, among, .. } => {
+            let footnote = source
+                .as_ref()
+                .and_then(|key| a.references.iter().position(|(k, _)| k == key))
+                .map_or(String::new(), |n| format!(" [{}]", n + 1));
+            let marks: Vec<String> = input.provenance.marks.iter().map(mark).collect();
+            let marks = if marks.is_empty() { String::new() } else { format!("; {}", marks.join("; ")) };
+            format!("{id}{footnote} ({}){marks}", decided(*d, *among))
+        }
+    }
+}
+
+fn inputs(a: &Assessment, width: usize) -> Vec<String> {
+    let mut lines = heading("Design as understood");
+    let mut t = table(&["input", "value", "share", "from"], width, &[2]);
+    for (i, input) in a.device.table.inputs().iter().enumerate() {
+        t.add_row(vec![input.name.clone(), value_of(input), plain(&share(a, i)), source_of(a, input)]);
+    }
+    if let Some(likely) = &a.device.likely {
+        t.add_row(vec![
+            "γ of a barrier, for the window only".to_owned(),
+            value_of(&likely.input),
+            "–".to_owned(),
+            source_of(a, &likely.input),
+        ]);
+    }
+    lines.extend(table_lines(&t));
+    lines.extend(wrap("share: part of Σ(change)² of the first answer when each input moves by one standard deviation, one at a time", width));
+    lines
+}
+
+fn layer_row(a: &Assessment, at: Position, layer: &Layer, place: &str) -> Vec<String> {
+    let t = layer.thickness.si();
+    let beta = if a.device.is_ferromagnet(at) { format!("{:.3}", layer.asymmetry.si()) } else { "–".to_owned() };
+    let turns = match (a.device.is_ferromagnet(at), layer.magnetization) {
+        (false, _) => "–",
+        (true, Magnetization::Fixed) => "fixed",
+        (true, Magnetization::FixedOpposite) => "fixed, opposite",
+        (true, Magnetization::Free) => "free",
+    };
+    vec![
+        format!("{}{place}", position_name(&a.device, at)),
+        with_digits(layer.resistivity.si(), Scale::Resistivity, 3),
+        with_digits(layer.length.si(), Scale::Length, 3),
+        if t.is_finite() { with_digits(t, Scale::Length, 3) } else { "∞".to_owned() },
+        beta,
+        with_digits(layer.spin_resistance().si(), Scale::ResistanceArea, 3),
+        turns.to_owned(),
+    ]
+}
+
+fn end_word(end: &EndPlan) -> Option<&'static str> {
+    match end {
+        EndPlan::SemiInfinite(_) => None,
+        EndPlan::SpinSink => Some("spin sink"),
+        EndPlan::Reflecting => Some("reflecting"),
+        EndPlan::FedInPlane => Some("fed in plane"),
+    }
+}
+
+fn stack(a: &Assessment, width: usize) -> Vec<String> {
+    let mut lines = heading(&format!("Stack, from left to right (written as {})", summary::written(a.written)));
+    let mut t = table(
+        &["element", "ρ  |  RA", "λ  |  δ", "t", "β  |  γ", "r  |  r_b*", "magnetization"],
+        width,
+        &[1, 2, 3, 4, 5],
+    );
+    let empty = |text: &str| {
+        let mut row = vec![text.to_owned()];
+        row.resize(7, String::new());
+        row
+    };
+    match &a.blueprint.left {
+        End::SemiInfinite(layer) => {
+            t.add_row(layer_row(a, Position::LeftEnd, layer, " (semi-infinite)"));
+        }
+        _ => {
+            t.add_row(empty(&format!("({})", end_word(&a.device.left).unwrap_or("end"))));
+        }
+    }
+    for (i, element) in a.blueprint.elements.iter().enumerate() {
+        let at = Position::Element(i);
+        match element {
+            Element::Layer(layer) => {
+                t.add_row(layer_row(a, at, layer, ""));
+            }
+            Element::Interface(x) => {
+                let ra = x.spin_resistance.resistance_area(x.asymmetry).si();
+                let delta = x.memory_loss.si();
+                let none = x.spin_resistance.si() <= 0.0;
+                t.add_row(vec![
+                    position_name(&a.device, at),
+                    if none { "no resistance".to_owned() } else { with_digits(ra, Scale::ResistanceArea, 3) },
+                    if delta > 0.0 { format!("{delta:.2}") } else { "–".to_owned() },
+                    "–".to_owned(),
+                    if none { "–".to_owned() } else { format!("{:.3}", x.asymmetry.si()) },
+                    if none { "–".to_owned() } else { with_digits(x.spin_resistance.si(), Scale::ResistanceArea, 3) },
+                    match x.magnetization {
+                        Magnetization::Free => "free".to_owned(),
+                        _ => "–".to_owned(),
+                    },
+                ]);
+            }
+        }
+    }
+    match &a.blueprint.right {
+        End::SemiInfinite(layer) => {
+            t.add_row(layer_row(a, Position::RightEnd, layer, " (semi-infinite)"));
+        }
+        _ => {
+            t.add_row(empty(&format!("({})", end_word(&a.device.right).unwrap_or("end"))));
+        }
+    }
+    lines.extend(table_lines(&t));
+    lines
+}
+
+fn resistances(a: &Assessment, width: usize) -> Vec<String> {
+    let Some(m) = &a.mismatch else { return Vec::new() };
+    let mut lines = heading("Spin resistances at the injector");
+    let mut row = |label: &str, value: String| lines.extend(labelled(label, &value, width));
+    row("r_F of the ferromagnet", area(m.r_ferromagnet.si()));
+    row("r_N of the channel", format!(
+        "{}, {} times r_F",
+        area(m.r_channel.si()),
+        factor(m.r_channel.si() / m.r_ferromagnet.si())
+    ));
+    if m.r_interface.si() > 0.0 {
+        row("r_b* of the interface", format!(
+            "{}, {} times r_N, {} times r_F",
+            area(m.r_interface.si()),
+            factor(m.r_interface.si() / m.r_channel.si()),
+            factor(m.r_interface.si() / m.r_ferromagnet.si())
+        ));
+        row("RA of the interface", format!(
+            "{} with both channels in parallel, r_b*(1−γ²); a measurement on this stack reads {}, r_b*(1−γp)",
+            area(m.resistance_area.si()),
+            area(m.measured.si())
+        ));
+    }
+    row("seen from the channel's face", format!(
+        "contact {}, channel {}",
+        area(m.contact.si()),
+        if m.channel.si().is_finite() { area(m.channel.si()) } else { "closed".to_owned() }
+    ));
+    if m.from_far_side.abs() > 0.0 {
+        row("from the far contact", format!("{} of the injected polarization", percent(m.from_far_side)));
+    }
+    lines
+}
+
+fn place_name(a: &Assessment, face: usize) -> String {
+    let before = match face.checked_sub(1) {
+        Some(i) => Some(Position::Element(i)),
+        None => matches!(a.device.left, EndPlan::SemiInfinite(_)).then_some(Position::LeftEnd),
+    };
+    let after = if face < a.device.elements.len() {
+        Some(Position::Element(face))
+    } else {
+        matches!(a.device.right, EndPlan::SemiInfinite(_)).then_some(Position::RightEnd)
+    };
+    let name = |at: Option<Position>, end: &EndPlan| {
+        at.map_or_else(|| end_word(end).unwrap_or("end").to_owned(), |at| position_name(&a.device, at))
+    };
+    format!("{} → {}", name(before, &a.device.left), name(after, &a.device.right))
+}
+
+fn potentials(a: &Assessment, width: usize) -> Vec<String> {
+    let (j, told) = match a.device.current_density {
+        Some(j) => (j.si(), with_digits(j.si(), Scale::CurrentDensity, 3)),
+        None => (1e9, "10⁵ A/cm² (none stated)".to_owned()),
+    };
+    let mut lines = Vec::new();
+    let states: &[(&str, &[Face])] = if a.device.has_two_states {
+        &[("parallel", &a.faces[0]), ("antiparallel", &a.faces[1])]
+    } else {
+        &[("", &a.faces[0])]
+    };
+    for (name, faces) in states {
+        let state = if name.is_empty() { String::new() } else { format!(", {name}") };
+        lines.extend(heading(&format!("Electrochemical potentials at the faces{state}, at {told}")));
+        let mut t = table(&["face", "p = J/j", "u = (V↑−V↓)/2", "V↑", "V↓"], width, &[1, 2, 3, 4]);
+        for (k, f) in faces.iter().enumerate() {
+            let u = f.accumulation_per_current_density.si() * j;
+            let v = f.potential_per_current_density.si() * j;
+            t.add_row(vec![
+                place_name(a, k),
+                plain(&percent(f.polarization.si())),
+                plain(&voltage(u)),
+                with_digits(v + u, Scale::Voltage, 4),
+                with_digits(v - u, Scale::Voltage, 4),
+            ]);
+        }
+        lines.extend(table_lines(&t));
+    }
+    lines
+}
+
+fn contact_windows(a: &Assessment, width: usize) -> Vec<String> {
+    if a.contact_windows.is_empty() {
+        return Vec::new();
+    }
+    let mut lines = heading("Window of each contact alone, the others as they are");
+    for (element, w) in &a.contact_windows {
+        let name = a.device.name(Position::Element(*element)).map_or(String::new(), |n| n.path.clone());
+        lines.extend(labelled(&name, &summary::window_text(a, w), width));
+    }
+    lines
+}
+
+fn checks(a: &Assessment, width: usize) -> Vec<String> {
+    if a.checks.is_empty() {
+        return Vec::new();
+    }
+    let mut lines = heading("Published values of this contact, shown beside the answer and never fed to it");
+    for c in &a.checks {
+        let footnote = c
+            .source
+            .as_ref()
+            .and_then(|key| a.references.iter().position(|(k, _)| k == key))
+            .map_or(String::new(), |n| format!(" [{}]", n + 1));
+        let at = c.temperature.map_or(String::new(), |t| format!(" at {t} K"));
+        let recalled = if c.recalled { ", recalled, not read" } else { "" };
+        let value = with_spread(c.reading.si, &c.reading.spread, Scale::Percent);
+        lines.extend(labelled(&format!("{} polarization", c.kind), &format!("{value}{at}, {}{footnote}{recalled}", c.record), width));
+    }
+    lines
+}
+
+fn findings(a: &Assessment, width: usize) -> Vec<String> {
+    let mut lines = heading("Findings");
+    if a.findings.is_empty() {
+        lines.push("none".to_owned());
+    }
+    for f in &a.findings {
+        lines.extend(marked(severity_mark(f.severity()), &format!("{} [{}]", finding(f), f.rule_name()), width));
+    }
+    lines
+}
+
+fn sources(a: &Assessment, width: usize) -> Vec<String> {
+    if a.references.is_empty() {
+        return Vec::new();
+    }
+    let mut lines = heading("Sources");
+    for (i, (key, reference)) in a.references.iter().enumerate() {
+        let text = reference.as_ref().map_or_else(|| key.clone(), |r| r.full.clone());
+        lines.extend(marked(&format!("[{}]", i + 1), &text, width));
+    }
+    lines.extend(wrap("Model: Valet and Fert, Phys. Rev. B 48, 7099 (1993); Fert and Jaffrès, Phys. Rev. B 64, 184420 (2001): diffusive, linear, one-dimensional, collinear.", width));
+    lines
+}
+
+/// The full answer, `width` characters wide.
+#[must_use]
+pub fn full(a: &Assessment, width: usize) -> Vec<String> {
+    let mut lines = summary::summary_rows(a, width);
+    lines.extend(findings(a, width));
+    lines.extend(inputs(a, width));
+    lines.extend(stack(a, width));
+    lines.extend(resistances(a, width));
+    lines.extend(potentials(a, width));
+    lines.extend(contact_windows(a, width));
+    lines.extend(checks(a, width));
+    lines.extend(sources(a, width));
+    lines
+}

@@ -1,0 +1,103 @@
+//! Numbers of answers, printed in the trade's units.
+
+use crate::designs::goals::{Comparison, Target};
+use crate::quantities::dimensions::Measured;
+use crate::quantities::kind::Scale;
+use crate::quantities::meanings::ResistanceAreaProduct;
+use crate::quantities::print::with_digits;
+
+use super::lines::joined;
+
+/// Digits of a computed result.
+pub const DIGITS: usize = 3;
+
+/// A result of the given scale, its parts held together.
+#[must_use]
+pub fn result(si: f64, scale: Scale) -> String {
+    joined(&with_digits(si, scale, DIGITS))
+}
+
+/// A resistance-area product of any meaning.
+#[must_use]
+pub fn area(si: f64) -> String {
+    result(si, Scale::ResistanceArea)
+}
+
+/// A polarization or a ratio in per cent.
+#[must_use]
+pub fn percent(si: f64) -> String {
+    result(si, Scale::Percent)
+}
+
+/// A voltage; below a nanovolt the decimal powers of it.
+#[must_use]
+pub fn voltage(si: f64) -> String {
+    result(si, Scale::Voltage)
+}
+
+/// A factor such as 9900 or 3.1×10⁷, without unit.
+#[must_use]
+pub fn factor(x: f64) -> String {
+    if !x.is_finite() {
+        return "infinitely many".to_owned();
+    }
+    let digits = 2;
+    let power = x.abs().log10().floor();
+    if (0.0..5.0).contains(&power) {
+        let step = 10.0_f64.powf((power - f64::from(digits) + 1.0).max(-1.0));
+        let rounded = (x / step).round() * step;
+        if rounded < 10.0 { format!("{rounded:.1}") } else { format!("{rounded:.0}") }
+    } else {
+        with_digits(x, Scale::Plain, 2)
+    }
+}
+
+/// 1 − β as people write it: `0.956` far from one, `1 − 1.2×10⁻⁴` near it.
+#[must_use]
+pub fn near_one(short_of_one: f64) -> String {
+    if short_of_one < 0.01 {
+        format!("1\u{a0}−\u{a0}{}", joined(&with_digits(short_of_one, Scale::Plain, 2)))
+    } else {
+        format!("{:.3}", 1.0 - short_of_one)
+    }
+}
+
+/// A value of a target.
+#[must_use]
+pub fn of_target(target: Target, si: f64) -> String {
+    result(si, target.kind().scale)
+}
+
+/// A comparison of a target, `≥ 10 %`.
+#[must_use]
+pub fn comparison(target: Target, comparison: &Comparison) -> String {
+    let scale = target.kind().scale;
+    let print = |x: f64| joined(&with_digits(x, scale, 4)).replace(".0\u{a0}", "\u{a0}");
+    let tidy = |x: f64| tidy(&print(x));
+    match *comparison {
+        Comparison::AtLeast(a) => format!("≥\u{a0}{}", tidy(a)),
+        Comparison::AtMost(b) => format!("≤\u{a0}{}", tidy(b)),
+        Comparison::Between(a, b) => format!("{}\u{a0}..\u{a0}{}", tidy(a), tidy(b)),
+    }
+}
+
+/// Drops zeros behind the decimal point of a number that was written exactly.
+fn tidy(text: &str) -> String {
+    let Some((number, unit)) = text.split_once('\u{a0}') else { return text.to_owned() };
+    if number.contains('.') && !number.contains('×') {
+        let short = number.trim_end_matches('0').trim_end_matches('.');
+        return format!("{short}\u{a0}{unit}");
+    }
+    text.to_owned()
+}
+
+/// An interval of resistance-area products.
+#[must_use]
+pub fn window(low: Option<ResistanceAreaProduct>, high: Option<ResistanceAreaProduct>) -> String {
+    match (low, high) {
+        (Some(l), Some(h)) => format!("{} .. {}", area(l.si()), area(h.si())),
+        (Some(l), None) => format!("≥\u{a0}{} (upper edge: none)", area(l.si())),
+        (None, Some(h)) => format!("≤\u{a0}{} (lower edge: none)", area(h.si())),
+        (None, None) => "any (edges: none)".to_owned(),
+    }
+}

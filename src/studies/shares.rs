@@ -1,0 +1,64 @@
+//! How much each input carries: the change of the answer when it moves one standard deviation, one at a
+//! time, as a share of the sum of squares.
+
+use crate::devices::vertical::Vertical;
+use crate::models::ladder::StackFault;
+
+use super::target::Wish;
+
+/// One input's part.
+#[derive(Clone, PartialEq, Debug)]
+pub struct Share {
+    /// Column of the input table.
+    pub column: usize,
+    /// Mean absolute change per standard deviation, SI.
+    pub change: f64,
+    /// Share of Σ(change)², 0 to 1.
+    pub share: f64,
+}
+
+/// Shares of all inputs that have a spread, largest first. Inputs whose spread is exact, a bound or
+/// unknown are left out.
+///
+/// # Errors
+/// [`StackFault`]; designs that were read without fault do not give one.
+pub fn shares(device: &Vertical, wish: Wish) -> Result<Vec<Share>, StackFault> {
+    let central = wish.of_outcome(&device.evaluate(device.table.central().view())?);
+    let mut all = Vec::new();
+    for column in 0..device.table.inputs().len() {
+        let mut changes = Vec::new();
+        for sigmas in [1.0, -1.0] {
+            if let Some(row) = device.table.moved(column, sigmas) {
+                let moved = wish.of_outcome(&device.evaluate(row.view())?);
+                changes.push((moved - central).abs());
+            }
+        }
+        if !changes.is_empty() {
+            let change = changes.iter().sum::<f64>() / changes.len() as f64;
+            all.push(Share { column, change, share: 0.0 });
+        }
+    }
+    let total: f64 = all.iter().map(|s| s.change * s.change).sum();
+    if total > 0.0 {
+        for s in &mut all {
+            s.share = s.change * s.change / total;
+        }
+    }
+    all.sort_by(|a, b| b.share.total_cmp(&a.share).then(a.column.cmp(&b.column)));
+    Ok(all)
+}
+
+/// The smallest set of inputs that carries at least this fraction of Σ(change)².
+#[must_use]
+pub fn carriers(shares: &[Share], fraction: f64) -> Vec<Share> {
+    let mut sum = 0.0;
+    let mut set = Vec::new();
+    for share in shares {
+        if sum >= fraction {
+            break;
+        }
+        sum += share.share;
+        set.push(share.clone());
+    }
+    set
+}
