@@ -490,7 +490,7 @@ impl Work<'_> {
             // Nothing stated. Between metals the library may know the interface; on a semiconductor a bare
             // contact has no resistance of its own in this model, which a finding says.
             if let Some((f, n, false)) = &both {
-                self.known_direct(path, f, n, &wanted, &mut plan);
+                self.known_direct(path, f, n, &wanted, &mut plan, (true, true));
             }
             return Some(plan);
         };
@@ -514,7 +514,8 @@ impl Work<'_> {
                 false,
             ));
         } else if let Some((f, n, _)) = &both {
-            self.known_direct(path, f, n, &wanted, &mut plan);
+            let missing = (spec.interface_asymmetry.is_none(), spec.spin_memory_loss.is_none());
+            self.known_direct(path, f, n, &wanted, &mut plan, missing);
         }
         if matches!(plan.resistance, InterfaceResistancePlan::Zero) {
             self.not_in_library(
@@ -541,8 +542,16 @@ impl Work<'_> {
         Some(plan)
     }
 
-    /// AR*, γ and δ of a direct contact between library metals, as far as records exist.
-    fn known_direct(&mut self, path: &str, f: &str, n: &str, wanted: &Wanted, plan: &mut InterfacePlan) {
+    /// AR* of a direct contact between library metals, and γ and δ where asked for, as far as records exist.
+    fn known_direct(
+        &mut self,
+        path: &str,
+        f: &str,
+        n: &str,
+        wanted: &Wanted,
+        plan: &mut InterfacePlan,
+        (asymmetry_wanted, loss_wanted): (bool, bool),
+    ) {
         let find = |number| choose::contact_number(self.library, f, None, n, number, wanted, self.faults);
         let resistance = find(ContactNumber::SpinResistance);
         let asymmetry = find(ContactNumber::Asymmetry);
@@ -553,9 +562,12 @@ impl Work<'_> {
                 ContactNumber::SpinResistance,
                 resistance,
             ));
-            plan.asymmetry = Some(self.contact_value(path, ContactNumber::Asymmetry, asymmetry));
-            plan.memory_loss =
-                loss.map(|loss| self.contact_value(path, ContactNumber::MemoryLoss, loss));
+            if asymmetry_wanted {
+                plan.asymmetry = Some(self.contact_value(path, ContactNumber::Asymmetry, asymmetry));
+            }
+            plan.memory_loss = loss
+                .filter(|_| loss_wanted)
+                .map(|loss| self.contact_value(path, ContactNumber::MemoryLoss, loss));
         }
     }
 

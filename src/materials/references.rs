@@ -129,21 +129,26 @@ fn year(entry: &Entry) -> String {
 }
 
 fn reference(entry: &Entry) -> Reference {
-    let people: Vec<String> = entry
+    let mut people: Vec<String> = entry
         .author()
         .map(|authors| authors.into_iter().map(|a| a.name).filter(|n| !n.is_empty()).collect())
         .unwrap_or_default();
+    // BibTeX writes a list that goes on as `and others`.
+    let goes_on = people.iter().any(|p| p == "others");
+    people.retain(|p| p != "others");
     let year = year(entry);
     let surname = people.first().cloned().unwrap_or_else(|| {
         field(entry, "author").or_else(|| field(entry, "title")).unwrap_or_else(|| entry.key.clone())
     });
     let short_authors = match people.len() {
+        _ if goes_on => format!("{surname} et al."),
         0 | 1 => surname,
         2 => format!("{surname} and {}", people[1]),
         _ => format!("{surname} et al."),
     };
     let authors = match people.len() {
         0 => short_authors.clone(),
+        _ if goes_on => format!("{} et al.", people[0]),
         1..=3 => people.join(", "),
         _ => format!("{} et al.", people[0]),
     };

@@ -26,8 +26,9 @@
 //! Matter 19, 183201 (2007) [abstract read].
 //!
 //! # Accuracy
-//! J and u to 1e-12 of the sum of the absolute contributions of all sources; ΔRA to 1e-12 of itself unless
-//! its own terms cancel. Checked in tests/suite/outside/stacks.rs against 60-digit solutions.
+//! J and u to 1e-12 of the sum of the absolute contributions of all sources; RA to 1e-12 of itself; ΔRA to
+//! 1e-12 of itself unless its own terms cancel. Checked in tests/suite/outside/stacks.rs against 60-digit
+//! solutions.
 
 use crate::numerics::hyperbolic::reduced;
 use crate::quantities::dimensions::{ElectricalResistivity, Measured, ResistanceTimesArea};
@@ -124,7 +125,7 @@ pub enum End {
     /// J = 0: no spin current passes.
     Reflecting,
     /// The outermost layer is a strip that carries the current sideways, J = βj at its far face; its own
-    /// series resistance is not counted.
+    /// series resistance ρt is not counted in RA, only β times its whole accumulation down to u = 0.
     FedInPlane,
 }
 
@@ -145,6 +146,8 @@ pub struct Stack {
     rungs: Vec<Rung>,
     turns: Vec<bool>,
     resistances: Vec<f64>,
+    /// T = t/λ of each layer, δ of each interface. Only [`Stack::inside`] needs it.
+    reduced: Vec<f64>,
 }
 
 /// Spin current and spin accumulation at one face.
@@ -180,14 +183,15 @@ pub struct Sides {
     pub right_source: f64,
 }
 
-fn rung_of(element: &Element) -> (Rung, f64, bool) {
+/// Rung, series resistance, reduced thickness and whether it flips.
+fn rung_of(element: &Element) -> (Rung, f64, f64, bool) {
     match element {
         Element::Layer(layer) => {
             let t = layer.thickness.si() / layer.length.si();
             let r = layer.spin_resistance().si();
             let resistance = layer.resistivity.si() * layer.thickness.si();
             let beta = layer.asymmetry.si() * layer.magnetization.sign();
-            (layer_rung(r, t, beta), resistance, layer.magnetization == Magnetization::Free)
+            (layer_rung(r, t, beta), resistance, t, layer.magnetization == Magnetization::Free)
         }
         Element::Interface(interface) => {
             let r_b = interface.spin_resistance.si();
@@ -199,7 +203,7 @@ fn rung_of(element: &Element) -> (Rung, f64, bool) {
             } else {
                 Rung { series: r_b, shunt: 0.0, pass: 1.0, bend: 0.0, reach: 0.5 * r_b, asymmetry: gamma }
             };
-            (rung, resistance, interface.magnetization == Magnetization::Free)
+            (rung, resistance, delta, interface.magnetization == Magnetization::Free)
         }
     }
 }
@@ -213,6 +217,22 @@ fn layer_rung(r: f64, t: f64, asymmetry: f64) -> Rung {
         bend: f.tanh * f.half_tanh,
         reach: r * f.half_tanh,
         asymmetry,
+    }
+}
+
+/// (u_right − u_left)/j over a rung driven with asymmetry `own`.
+///
+/// The same number has two forms: the difference itself, and reach·(2·own − p_left − p_right), which is what
+/// the diffusion equation makes of it. The first loses digits where u hardly changes (a layer much thinner
+/// than λ), the second where the current already has the polarization of the layer and `reach` is large
+/// (β near 1). Each subtracts at the size of its terms, so the form with the smaller terms is taken.
+fn rise(rung: &Rung, own: f64, left: At, right: At) -> f64 {
+    let by_current = rung.reach * (2.0 * own.abs() + left.current.abs() + right.current.abs());
+    let by_accumulation = left.accumulation.abs() + right.accumulation.abs();
+    if by_current <= by_accumulation {
+        rung.reach * ((own - left.current) + (own - right.current))
+    } else {
+        right.accumulation - left.accumulation
     }
 }
 
@@ -238,12 +258,17 @@ impl Stack {
             rungs: Vec::with_capacity(elements.len()),
             turns: Vec::with_capacity(elements.len()),
             resistances: Vec::with_capacity(elements.len()),
+            reduced: Vec::with_capacity(elements.len()),
         };
         for element in elements {
-            let (rung, resistance, turns) = rung_of(element);
+            let (rung, resistance, reduced, turns) = rung_of(element);
             stack.rungs.push(rung);
             stack.turns.push(turns);
             stack.resistances.push(resistance);
+            stack.reduced.push(reduced);
+        }
+        for k in [stack.fed(true), stack.fed(false)].into_iter().flatten() {
+            stack.resistances[k] = 0.0;
         }
         Ok(stack)
     }
@@ -279,12 +304,45 @@ impl Stack {
         }
     }
 
-    fn driven(&self, weight: impl Fn(f64, bool) -> f64 + Copy) -> (Passed, Passed, Vec<At>) {
+    /// Faces of the stack with the sources weighed by `weight(asymmetry, turns)`.
+    fn driven(&self, weight: impl Fn(f64, bool) -> f64 + Copy) -> Vec<At> {
         let last = self.rungs.len().checked_sub(1);
         let left = self.end(&self.left, last.map(|_| 0), weight);
         let right = self.end(&self.right, last, weight);
-        let faces = sweep(left, right, &self.rungs, |i, rung| weight(rung.asymmetry, self.turns[i]));
-        (left, right, faces)
+        let mut faces = sweep(left, right, &self.rungs, |i, rung| weight(rung.asymmetry, self.turns[i]));
+        // At the far face of a strip fed in its plane u' = 0, so that u there is u of the near face times
+        // sech(t/λ); what the sweep gives there is the difference of two terms of the size of βr·coth(t/λ).
+        for (fed, outer, inner) in [
+            (self.fed(true), 0, 1),
+            (self.fed(false), self.rungs.len(), self.rungs.len().saturating_sub(1)),
+        ] {
+            if let Some(k) = fed {
+                faces[outer] = At {
+                    current: weight(self.rungs[k].asymmetry, self.turns[k]),
+                    accumulation: faces[inner].accumulation * self.rungs[k].pass,
+                };
+            }
+        }
+        if self.rungs.len() == 1 && self.fed(true).is_some() && self.fed(false).is_some() {
+            // u' = 0 at both faces of one layer leaves no accumulation at all.
+            faces.iter_mut().for_each(|face| face.accumulation = 0.0);
+        }
+        faces
+    }
+
+    /// The asymmetry of what lies at an end and takes part in RA beyond the outermost face: the end medium
+    /// or the strip fed in its plane.
+    fn outer_asymmetry(&self, left: bool, weight: impl Fn(f64, bool) -> f64) -> f64 {
+        match if left { &self.left } else { &self.right } {
+            End::SemiInfinite(layer) => weight(
+                layer.asymmetry.si() * layer.magnetization.sign(),
+                layer.magnetization == Magnetization::Free,
+            ),
+            End::FedInPlane => {
+                self.fed(left).map_or(0.0, |k| weight(self.rungs[k].asymmetry, self.turns[k]))
+            }
+            End::SpinSink | End::Reflecting => 0.0,
+        }
     }
 
     fn weight(state: State) -> impl Fn(f64, bool) -> f64 + Copy {
@@ -296,26 +354,22 @@ impl Stack {
 
     /// Solves the stack in one magnetic state.
     ///
-    /// RA sums, over layers and interfaces, ρt + β·r·tanh(T/2)·(2β − p_left − p_right), which is what
-    /// ρt + β(u_right − u_left)/j becomes when u is eliminated, so that no two voltages are subtracted;
-    /// an interface without loss adds r_b*(1 − γp) in the same form.
+    /// RA sums ρt + β(u_right − u_left)/j over the layers and r_b*(1 − γp) over the interfaces, which is
+    /// r_b*(1 − γ²) + γ(u_right − u_left)/j; the end media and strips fed in their plane enter down to u = 0.
     #[must_use]
     pub fn solve(&self, state: State) -> Solution {
         let weight = Self::weight(state);
-        let (_, _, faces) = self.driven(weight);
-        let (left_cap, right_cap) = (self.fed(true), self.fed(false));
-        let drops: Vec<f64> = (0..self.rungs.len())
-            .map(|k| self.drop_over(k, &faces, weight, (left_cap, right_cap)))
-            .collect();
-        let first = faces.first().map_or(0.0, |f| f.current);
-        let last = faces.last().map_or(0.0, |f| f.current);
-        let outer_left = Self::outer(&self.left, first, weight);
-        let outer_right = Self::outer(&self.right, last, weight);
+        let faces = self.driven(weight);
+        let first = faces.first().map_or(0.0, |f| f.accumulation);
+        let last = faces.last().map_or(0.0, |f| f.accumulation);
+        let outer_left = Self::outer_resistance(&self.left) + self.outer_asymmetry(true, weight) * first;
+        let outer_right = Self::outer_resistance(&self.right) - self.outer_asymmetry(false, weight) * last;
         let mut potential = outer_right;
         let mut out: Vec<Face> = Vec::with_capacity(faces.len());
         for (k, at) in faces.iter().enumerate().rev() {
-            if k < drops.len() {
-                potential += drops[k];
+            if let (Some(rung), Some(right)) = (self.rungs.get(k), faces.get(k + 1)) {
+                let a = weight(rung.asymmetry, self.turns[k]);
+                potential += self.resistances[k] + a * rise(rung, a, *at, *right);
             }
             out.push(Face {
                 polarization: CurrentSpinPolarization::from_si(at.current),
@@ -326,29 +380,7 @@ impl Stack {
         out.reverse();
         Solution {
             faces: out,
-            resistance_area: ResistanceAreaProduct::from_si(
-                outer_left + drops.iter().sum::<f64>() + outer_right,
-            ),
-        }
-    }
-
-    /// Drop of (V↑ + V↓)/2 over element k, which is also what the element adds to RA.
-    fn drop_over(
-        &self,
-        k: usize,
-        faces: &[At],
-        weight: impl Fn(f64, bool) -> f64,
-        caps: (Option<usize>, Option<usize>),
-    ) -> f64 {
-        let rung = &self.rungs[k];
-        let a = weight(rung.asymmetry, self.turns[k]);
-        let (p, q) = (faces[k].current, faces[k + 1].current);
-        if caps.0 == Some(k) {
-            a * (a - q) / rung.shunt
-        } else if caps.1 == Some(k) {
-            a * (a - p) / rung.shunt
-        } else {
-            self.resistances[k] + a * rung.reach * (2.0 * a - p - q)
+            resistance_area: ResistanceAreaProduct::from_si(potential + outer_left),
         }
     }
 
@@ -361,15 +393,13 @@ impl Stack {
         if matches!(end, End::FedInPlane) { index } else { None }
     }
 
-    /// What an end medium adds to RA when a current of polarization `p` enters it.
-    fn outer(end: &End, p: f64, weight: impl Fn(f64, bool) -> f64) -> f64 {
+    /// What an end medium adds to RA besides its accumulation.
+    fn outer_resistance(end: &End) -> f64 {
         match end {
             End::SemiInfinite(layer) => {
-                let turns = layer.magnetization == Magnetization::Free;
-                let b = weight(layer.asymmetry.si() * layer.magnetization.sign(), turns);
                 let t = layer.thickness.si();
                 let length = if t.is_finite() { t } else { layer.length.si() };
-                layer.resistivity.si() * length + b * layer.spin_resistance().si() * (b - p)
+                layer.resistivity.si() * length
             }
             _ => 0.0,
         }
@@ -378,37 +408,21 @@ impl Stack {
     /// ΔRA = RA(antiparallel) − RA(parallel), from the cross term.
     ///
     /// Only the sources of the magnets that flip are driven and the others read their effect:
-    /// ΔRA = 4 Σ over what does not flip of β·r·tanh(T/2)·(p_left + p_right) (and of γ r_b* p). The two
-    /// resistances, which agree in most of their digits, are never subtracted.
+    /// ΔRA = −4 Σ over what does not flip of β(u_right − u_left)/j (γ for an interface), the ends included.
+    /// The two resistances, which agree in most of their digits, are never subtracted.
     #[must_use]
     pub fn resistance_area_change(&self) -> ResistanceAreaChange {
         let drive = |asymmetry: f64, turns: bool| if turns { asymmetry } else { 0.0 };
         let read = |asymmetry: f64, turns: bool| if turns { 0.0 } else { asymmetry };
-        let (_, _, faces) = self.driven(drive);
-        let (left_cap, right_cap) = (self.fed(true), self.fed(false));
-        let mut sum = 0.0;
-        for (end, p) in [
-            (&self.left, faces.first().map_or(0.0, |f| f.current)),
-            (&self.right, faces.last().map_or(0.0, |f| f.current)),
-        ] {
-            if let End::SemiInfinite(layer) = end {
-                let turns = layer.magnetization == Magnetization::Free;
-                let b = read(layer.asymmetry.si() * layer.magnetization.sign(), turns);
-                sum += b * layer.spin_resistance().si() * p;
-            }
-        }
+        let faces = self.driven(drive);
+        let first = faces.first().map_or(0.0, |f| f.accumulation);
+        let last = faces.last().map_or(0.0, |f| f.accumulation);
+        let mut sum = self.outer_asymmetry(true, read) * first - self.outer_asymmetry(false, read) * last;
         for (i, rung) in self.rungs.iter().enumerate() {
-            let a = read(rung.asymmetry, self.turns[i]);
-            let (p, q) = (faces[i].current, faces[i + 1].current);
-            sum += if left_cap == Some(i) {
-                a * q / rung.shunt
-            } else if right_cap == Some(i) {
-                a * p / rung.shunt
-            } else {
-                a * rung.reach * (p + q)
-            };
+            // What reads is not driven: its own source is 0 here.
+            sum += read(rung.asymmetry, self.turns[i]) * rise(rung, 0.0, faces[i], faces[i + 1]);
         }
-        ResistanceAreaChange::from_si(4.0 * sum)
+        ResistanceAreaChange::from_si(-4.0 * sum)
     }
 
     /// Magnetoresistance ΔRA/RA(parallel).
@@ -449,10 +463,12 @@ impl Stack {
             return Some(if fraction < 0.5 { *left } else { *right });
         }
         let x = fraction.clamp(0.0, 1.0);
-        // tanh(T/2) = reach·√(shunt/series) keeps T out of the kernel's five numbers.
-        let t = 2.0 * (rung.reach * (rung.shunt / rung.series).sqrt()).min(1.0).atanh();
+        let t = self.reduced[k];
+        // sinh(aT)/sinh(T): what a face contributes at the distance (1 − a)t from it.
         let part = |a: f64| {
-            if t.is_finite() && t > 0.0 {
+            if a <= 0.0 {
+                0.0
+            } else if a < 1.0 && t > 0.0 {
                 ((a - 1.0) * t).exp() * (-2.0 * a * t).exp_m1() / (-2.0 * t).exp_m1()
             } else {
                 a

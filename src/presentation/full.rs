@@ -1,7 +1,7 @@
 //! The full answer: the short one, then the design as understood, its expansion into a stack, spin
 //! resistances and their ratios, potentials, windows, check values, every finding, and the sources.
 
-use comfy_table::{CellAlignment, ContentArrangement, Table, presets};
+use comfy_table::{CellAlignment, ColumnConstraint, ContentArrangement, Table, presets};
 
 use crate::devices::inputs::Input;
 use crate::devices::provenance::Origin;
@@ -26,18 +26,31 @@ pub fn table(head: &[&str], width: usize, right: &[usize]) -> Table {
         .set_content_arrangement(ContentArrangement::Dynamic)
         .set_width(u16::try_from(width).unwrap_or(u16::MAX))
         .set_header(head.to_vec());
-    for column in right {
-        if let Some(c) = t.column_mut(*column) {
-            c.set_cell_alignment(CellAlignment::Right);
+    for column in 0..head.len() {
+        if let Some(c) = t.column_mut(column) {
+            c.set_padding((0, 1));
+            if right.contains(&column) {
+                c.set_cell_alignment(CellAlignment::Right);
+            }
         }
     }
     t
 }
 
+/// Keeps the given columns from breaking a word.
+pub fn keep_whole(t: &mut Table, columns: &[usize]) {
+    for column in columns {
+        if let Some(c) = t.column_mut(*column) {
+            c.set_constraint(ColumnConstraint::ContentWidth);
+        }
+    }
+}
+
 /// The lines of a table without trailing blanks and without the outer rules.
 #[must_use]
 pub fn table_lines(t: &Table) -> Vec<String> {
-    let lines: Vec<String> = t.lines().map(|l| l.trim_end().to_owned()).collect();
+    let lines: Vec<String> =
+        t.lines().map(|l| l.replace('\u{a0}', " ").trim_end().to_owned()).collect();
     let rule = |l: &String| !l.is_empty() && l.chars().all(|c| "─═╌┄┈-= ".contains(c));
     let inner: Vec<String> =
         lines.iter().enumerate().filter(|(i, l)| !(rule(l) && (*i == 0 || *i + 1 == lines.len()))).map(|(_, l)| l.clone()).collect();
@@ -55,6 +68,11 @@ pub fn table_lines(t: &Table) -> Vec<String> {
             }
         })
         .collect()
+}
+
+/// Keeps a cell on one line.
+fn whole(text: &str) -> String {
+    text.replace(' ', "\u{a0}")
 }
 
 fn heading(text: &str) -> Vec<String> {
@@ -95,22 +113,46 @@ fn source_of(a: &Assessment, input: &Input) -> String {
     }
 }
 
+/// One line an input: name, value with spread, share. Inputs that follow each other and come from the same
+/// place are told it once, below them.
 fn inputs(a: &Assessment, width: usize) -> Vec<String> {
-    let mut lines = heading("Design as understood");
-    let mut t = table(&["input", "value", "share", "from"], width, &[2]);
-    for (i, input) in a.device.table.inputs().iter().enumerate() {
-        t.add_row(vec![input.name.clone(), value_of(input), plain(&share(a, i)), source_of(a, input)]);
+    let mut lines = heading("Design as understood: value, share of the answer's spread, where it comes from");
+    let mut all: Vec<(&Input, String)> = a
+        .device
+        .table
+        .inputs()
+        .iter()
+        .enumerate()
+        .map(|(i, input)| (input, plain(&share(a, i))))
+        .chain(a.device.likely.iter().map(|l| (&l.input, "window only".to_owned())))
+        .collect();
+    // In the order of the stack, not in the order in which they were resolved.
+    let place = |input: &Input| {
+        let path = input.name.rsplit_once('.').map_or("", |(p, _)| p);
+        a.device.names.iter().position(|n| n.path == path).unwrap_or(usize::MAX)
+    };
+    all.sort_by_key(|(input, _)| place(input));
+    let mut part = "";
+    for (i, (input, share)) in all.iter().enumerate() {
+        let (path, key) = input.name.rsplit_once('.').unwrap_or(("", &input.name));
+        if path != part {
+            lines.push(path.to_owned());
+            part = path;
+        }
+        let name = key.replace('_', " ");
+        let value = value_of(input);
+        lines.push(format!("  {name:<27}  {value:<24} {share:>6}").trim_end().to_owned());
+        let source = source_of(a, input);
+        let same_next = all
+            .get(i + 1)
+            .is_some_and(|(next, _)| {
+                next.name.rsplit_once('.').map_or("", |(p, _)| p) == path && source_of(a, next) == source
+            });
+        if !same_next {
+            lines.extend(marked("     ", &source, width));
+        }
     }
-    if let Some(likely) = &a.device.likely {
-        t.add_row(vec![
-            "γ of a barrier, for the window only".to_owned(),
-            value_of(&likely.input),
-            "–".to_owned(),
-            source_of(a, &likely.input),
-        ]);
-    }
-    lines.extend(table_lines(&t));
-    lines.extend(wrap("share: part of Σ(change)² of the first answer when each input moves by one standard deviation, one at a time", width));
+    lines.extend(wrap("Share: part of Σ(change)² of the first answer when each input moves by one standard deviation, one at a time; – where an input has no spread to move.", width));
     lines
 }
 
@@ -120,16 +162,16 @@ fn layer_row(a: &Assessment, at: Position, layer: &Layer, place: &str) -> Vec<St
     let turns = match (a.device.is_ferromagnet(at), layer.magnetization) {
         (false, _) => "–",
         (true, Magnetization::Fixed) => "fixed",
-        (true, Magnetization::FixedOpposite) => "fixed, opposite",
+        (true, Magnetization::FixedOpposite) => "opposite",
         (true, Magnetization::Free) => "free",
     };
     vec![
-        format!("{}{place}", position_name(&a.device, at)),
-        with_digits(layer.resistivity.si(), Scale::Resistivity, 3),
-        with_digits(layer.length.si(), Scale::Length, 3),
-        if t.is_finite() { with_digits(t, Scale::Length, 3) } else { "∞".to_owned() },
+        whole(&format!("{}{place}", position_name(&a.device, at))),
+        whole(&with_digits(layer.resistivity.si(), Scale::Resistivity, 3)),
+        whole(&with_digits(layer.length.si(), Scale::Length, 3)),
+        if t.is_finite() { whole(&with_digits(t, Scale::Length, 3)) } else { "∞".to_owned() },
         beta,
-        with_digits(layer.spin_resistance().si(), Scale::ResistanceArea, 3),
+        whole(&with_digits(layer.spin_resistance().si(), Scale::ResistanceArea, 3)),
         turns.to_owned(),
     ]
 }
@@ -146,7 +188,7 @@ fn end_word(end: &EndPlan) -> Option<&'static str> {
 fn stack(a: &Assessment, width: usize) -> Vec<String> {
     let mut lines = heading(&format!("Stack, from left to right (written as {})", summary::written(a.written)));
     let mut t = table(
-        &["element", "ρ  |  RA", "λ  |  δ", "t", "β  |  γ", "r  |  r_b*", "magnetization"],
+        &["element", "ρ or RA", "λ or δ", "t", "β or γ", "r or r_b*", "magnet"],
         width,
         &[1, 2, 3, 4, 5],
     );
@@ -157,7 +199,7 @@ fn stack(a: &Assessment, width: usize) -> Vec<String> {
     };
     match &a.blueprint.left {
         End::SemiInfinite(layer) => {
-            t.add_row(layer_row(a, Position::LeftEnd, layer, " (semi-infinite)"));
+            t.add_row(layer_row(a, Position::LeftEnd, layer, ", end"));
         }
         _ => {
             t.add_row(empty(&format!("({})", end_word(&a.device.left).unwrap_or("end"))));
@@ -175,11 +217,11 @@ fn stack(a: &Assessment, width: usize) -> Vec<String> {
                 let none = x.spin_resistance.si() <= 0.0;
                 t.add_row(vec![
                     position_name(&a.device, at),
-                    if none { "no resistance".to_owned() } else { with_digits(ra, Scale::ResistanceArea, 3) },
+                    if none { "none".to_owned() } else { whole(&with_digits(ra, Scale::ResistanceArea, 3)) },
                     if delta > 0.0 { format!("{delta:.2}") } else { "–".to_owned() },
                     "–".to_owned(),
                     if none { "–".to_owned() } else { format!("{:.3}", x.asymmetry.si()) },
-                    if none { "–".to_owned() } else { with_digits(x.spin_resistance.si(), Scale::ResistanceArea, 3) },
+                    if none { "–".to_owned() } else { whole(&with_digits(x.spin_resistance.si(), Scale::ResistanceArea, 3)) },
                     match x.magnetization {
                         Magnetization::Free => "free".to_owned(),
                         _ => "–".to_owned(),
@@ -190,13 +232,17 @@ fn stack(a: &Assessment, width: usize) -> Vec<String> {
     }
     match &a.blueprint.right {
         End::SemiInfinite(layer) => {
-            t.add_row(layer_row(a, Position::RightEnd, layer, " (semi-infinite)"));
+            t.add_row(layer_row(a, Position::RightEnd, layer, ", end"));
         }
         _ => {
             t.add_row(empty(&format!("({})", end_word(&a.device.right).unwrap_or("end"))));
         }
     }
     lines.extend(table_lines(&t));
+    let has_end = [&a.device.left, &a.device.right].iter().any(|e| end_word(e).is_none());
+    if has_end {
+        lines.extend(wrap("An outermost layer marked `end` is taken as many λ thick; its thickness, or λ where none is stated, counts in RA only.", width));
+    }
     lines
 }
 
@@ -251,10 +297,9 @@ fn place_name(a: &Assessment, face: usize) -> String {
 }
 
 fn potentials(a: &Assessment, width: usize) -> Vec<String> {
-    let (j, told) = match a.device.current_density {
-        Some(j) => (j.si(), with_digits(j.si(), Scale::CurrentDensity, 3)),
-        None => (1e9, "10⁵ A/cm² (none stated)".to_owned()),
-    };
+    let (j, stated) = summary::current_density(a);
+    let none = if stated { "" } else { " (the design states none)" };
+    let told = format!("{}{none}", plain(&summary::current_density_text(j)));
     let mut lines = Vec::new();
     let states: &[(&str, &[Face])] = if a.device.has_two_states {
         &[("parallel", &a.faces[0]), ("antiparallel", &a.faces[1])]
@@ -270,10 +315,10 @@ fn potentials(a: &Assessment, width: usize) -> Vec<String> {
             let v = f.potential_per_current_density.si() * j;
             t.add_row(vec![
                 place_name(a, k),
-                plain(&percent(f.polarization.si())),
-                plain(&voltage(u)),
-                with_digits(v + u, Scale::Voltage, 4),
-                with_digits(v - u, Scale::Voltage, 4),
+                percent(f.polarization.si()),
+                voltage(u),
+                whole(&with_digits(v + u, Scale::Voltage, 4)),
+                whole(&with_digits(v - u, Scale::Voltage, 4)),
             ]);
         }
         lines.extend(table_lines(&t));

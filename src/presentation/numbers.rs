@@ -72,8 +72,7 @@ pub fn of_target(target: Target, si: f64) -> String {
 #[must_use]
 pub fn comparison(target: Target, comparison: &Comparison) -> String {
     let scale = target.kind().scale;
-    let print = |x: f64| joined(&with_digits(x, scale, 4)).replace(".0\u{a0}", "\u{a0}");
-    let tidy = |x: f64| tidy(&print(x));
+    let tidy = |x: f64| tidy(&joined(&with_digits(x, scale, 4)));
     match *comparison {
         Comparison::AtLeast(a) => format!("≥\u{a0}{}", tidy(a)),
         Comparison::AtMost(b) => format!("≤\u{a0}{}", tidy(b)),
@@ -81,12 +80,26 @@ pub fn comparison(target: Target, comparison: &Comparison) -> String {
     }
 }
 
+/// A temperature.
+#[must_use]
+pub fn temperature(kelvin: f64) -> String {
+    tidy(&joined(&with_digits(kelvin, Scale::Temperature, 4)))
+}
+
 /// Drops zeros behind the decimal point of a number that was written exactly.
-fn tidy(text: &str) -> String {
-    let Some((number, unit)) = text.split_once('\u{a0}') else { return text.to_owned() };
-    if number.contains('.') && !number.contains('×') {
-        let short = number.trim_end_matches('0').trim_end_matches('.');
-        return format!("{short}\u{a0}{unit}");
+#[must_use]
+pub fn tidy(text: &str) -> String {
+    let (number, unit) = match text.split_once(['\u{a0}', ' ']) {
+        Some((number, unit)) => (number, format!("\u{a0}{unit}")),
+        None => (text, String::new()),
+    };
+    let (mantissa, power) = match number.split_once('×') {
+        Some((mantissa, power)) => (mantissa, format!("×{power}")),
+        None => (number, String::new()),
+    };
+    if mantissa.contains('.') {
+        let short = mantissa.trim_end_matches('0').trim_end_matches('.');
+        return format!("{short}{power}{unit}");
     }
     text.to_owned()
 }
@@ -96,8 +109,8 @@ fn tidy(text: &str) -> String {
 pub fn window(low: Option<ResistanceAreaProduct>, high: Option<ResistanceAreaProduct>) -> String {
     match (low, high) {
         (Some(l), Some(h)) => format!("{} .. {}", area(l.si()), area(h.si())),
-        (Some(l), None) => format!("≥\u{a0}{} (upper edge: none)", area(l.si())),
-        (None, Some(h)) => format!("≤\u{a0}{} (lower edge: none)", area(h.si())),
-        (None, None) => "any (edges: none)".to_owned(),
+        (Some(l), None) => format!("≥\u{a0}{}, upper edge none", area(l.si())),
+        (None, Some(h)) => format!("≤\u{a0}{}, lower edge none", area(h.si())),
+        (None, None) => "any, edges none".to_owned(),
     }
 }

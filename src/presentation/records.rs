@@ -11,7 +11,7 @@ use crate::quantities::print::{with_digits, with_spread};
 use crate::quantities::spread::Spread;
 use crate::quantities::text::Reading;
 
-use super::full::{table, table_lines};
+use super::full::{keep_whole, table, table_lines};
 use super::lines::{marked, wrap};
 
 /// The list of materials and interfaces.
@@ -22,6 +22,7 @@ pub fn list(all: &[Listed], width: usize) -> Vec<String> {
         let own = if l.from_user { " (yours)" } else { "" };
         t.add_row(vec![l.id.clone(), format!("{}{own}", l.class), l.aliases.join(", "), l.name.clone()]);
     }
+    keep_whole(&mut t, &[0, 1]);
     table_lines(&t)
 }
 

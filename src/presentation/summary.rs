@@ -6,20 +6,24 @@ use crate::designs::goals::{GoalState, Target};
 use crate::devices::vertical::{Position, Vertical};
 use crate::quantities::dimensions::Measured;
 use crate::quantities::kind::Scale;
-use crate::quantities::print::with_digits;
 use crate::studies::assess::{Assessment, GoalResult};
 use crate::studies::mismatch::{HalfMetal, Mismatch};
 use crate::studies::window::{NoWindow, Window};
 
-use super::lines::{joined, labelled, marked, wrap};
-use super::numbers::{area, comparison, factor, near_one, of_target, percent, result, voltage, window};
+use super::lines::{labelled, marked, wrap};
+use super::numbers::{
+    area, comparison, factor, near_one, of_target, percent, result, temperature, tidy,
+    voltage, window,
+};
 use super::wording::{finding, percent_share, position, severity_mark};
 
 /// Most lines of the short answer.
 pub const MOST_LINES: usize = 24;
 
-/// Current density that a spin accumulation is told for where none is stated, A/m².
-const PER_CURRENT_DENSITY: f64 = 1e9;
+/// Largest current density that voltages are told for where none is stated, A/m², and the drop over the
+/// stack that they are kept below.
+const MOST_CURRENT_DENSITY: f64 = 1e9;
+const MOST_DROP: f64 = 0.1;
 
 /// The stack in one line: `iron | magnesia | silicon`.
 #[must_use]
@@ -50,16 +54,45 @@ fn goal_text(g: &GoalResult) -> String {
 fn with_goal(a: &Assessment, target: Target, value: String) -> String {
     let goals: Vec<String> =
         a.goals.iter().filter(|g| g.goal.target == target).map(goal_text).collect();
-    if goals.is_empty() { value } else { format!("{value:<18}{}", goals.join("; ")) }
+    if goals.is_empty() {
+        return value;
+    }
+    // Blanks that do not break keep the goals in one column.
+    let blanks = 16_usize.saturating_sub(value.chars().count()).max(2);
+    let short = value.chars().count() <= 16;
+    let gap = if short { "\u{a0}".repeat(blanks) } else { "; ".to_owned() };
+    format!("{value}{gap}{}", goals.join("; "))
+}
+
+/// The current density that voltages are told for: the design's, or the largest power of ten in A/cm² that
+/// keeps the drop over the stack below a tenth of a volt. And whether the design states it.
+#[must_use]
+pub fn current_density(a: &Assessment) -> (f64, bool) {
+    match a.device.current_density {
+        Some(j) => (j.si(), true),
+        None => {
+            let most = MOST_DROP / a.resistance_area[0].si().max(f64::MIN_POSITIVE);
+            (10.0_f64.powf(most.log10().floor()).min(MOST_CURRENT_DENSITY), false)
+        }
+    }
 }
 
 /// Spin accumulation at the injector, with the current density it is told for.
 #[must_use]
 pub fn accumulation(a: &Assessment) -> String {
     let u = a.outcome.accumulation.si();
-    match a.device.current_density {
-        Some(j) => format!("{} at {}", voltage(u * j.si()), result(j.si(), Scale::CurrentDensity)),
-        None => format!("{} per 10⁵\u{a0}A/cm²", voltage(u * PER_CURRENT_DENSITY)),
+    let (j, stated) = current_density(a);
+    let at = if stated { "at" } else { "per" };
+    format!("{} {at} {}", voltage(u * j), current_density_text(j))
+}
+
+/// A current density, a bare power of ten written as such.
+#[must_use]
+pub fn current_density_text(j: f64) -> String {
+    let text = tidy(&result(j, Scale::CurrentDensity));
+    match text.strip_prefix("1×10⁰\u{a0}") {
+        Some(unit) => format!("1\u{a0}{unit}"),
+        None => text.strip_prefix("1×").map_or(text.clone(), str::to_owned),
     }
 }
 
@@ -114,7 +147,7 @@ fn asymmetry_text(a: &Assessment, w: &Window) -> String {
 pub fn window_text(a: &Assessment, found: &Result<Window, NoWindow>) -> String {
     match found {
         Ok(w) => {
-            let together = if w.together > 1 { "; all contacts scaled together" } else { "" };
+            let together = if w.together > 1 { "; both contacts scaled together" } else { "" };
             let stands = if w.here.si() > 0.0 {
                 format!("this design: {}{}", area(w.here.si()), position(w))
             } else {
@@ -172,24 +205,35 @@ pub fn half_metal_text(a: &Assessment, found: HalfMetal) -> String {
 pub fn honesty(a: &Assessment) -> String {
     let h = &a.honesty;
     let mut counts = Vec::new();
-    for (n, word) in [(h.recalled, "recalled"), (h.assumed, "assumed"), (h.stated, "stated in the design")] {
-        if n > 0 {
-            counts.push(format!("{n} {word}"));
+    if h.recalled > 0 {
+        counts.push(format!("{} recalled", h.recalled));
+    }
+    if h.assumed > 0 {
+        counts.push(format!("{} assumed", h.assumed));
+    }
+    if h.stated > 0 {
+        counts.push(format!("{} stated in the design", h.stated));
+    }
+    let counts = match counts.split_first() {
+        None => format!("all {} read or derived", h.inputs),
+        Some((first, rest)) => {
+            let (n, word) = first.split_once(' ').unwrap_or((first, ""));
+            let mut text = format!("{n} of {} {word}", h.inputs);
+            for r in rest {
+                text.push_str(&format!(", {r}"));
+            }
+            text
         }
-    }
-    let rest = h.inputs - h.recalled - h.assumed - h.stated.min(h.inputs - h.recalled - h.assumed);
-    if rest > 0 {
-        counts.push(format!("{rest} read or derived"));
-    }
-    let carry = match (h.carriers.len(), h.doubtful_carriers) {
-        (0, _) => "none has a spread".to_owned(),
-        (1, 0) => "the one that carries most of the result is neither recalled nor assumed".to_owned(),
-        (1, _) => "one of the recalled or assumed carries most of the result".to_owned(),
-        (n, 0) => format!("none of the {n} that carry most of the result is recalled or assumed"),
-        (n, d) if d == n => format!("the {n} that carry most of the result are all recalled or assumed"),
-        (n, d) => format!("{d} of the {n} that carry most of the result are recalled or assumed"),
     };
-    format!("{} inputs: {}; {carry}", h.inputs, counts.join(", "))
+    let carry = match (h.carriers.len(), h.doubtful_carriers) {
+        (0, _) => "no input has a spread to move".to_owned(),
+        (1, 0) => "one carries most of the result and is neither recalled nor assumed".to_owned(),
+        (1, _) => "one of the recalled or assumed carries most of the result".to_owned(),
+        (n, 0) => format!("{n} carry most of the result, none of them recalled or assumed"),
+        (n, d) if d == n => format!("{n} carry most of the result, all of them recalled or assumed"),
+        (n, d) => format!("{n} carry most of the result, {d} of them recalled or assumed"),
+    };
+    format!("{counts}; {carry}")
 }
 
 /// The short answer, `width` characters wide.
@@ -215,7 +259,7 @@ pub fn summary_rows(a: &Assessment, width: usize) -> Vec<String> {
         head.extend(wrap(title, width).into_iter().take(1));
     }
     head.extend(wrap(
-        &format!("{}, {}", sketch(a), joined(&with_digits(a.device.temperature.si(), Scale::Temperature, 4))),
+        &format!("{}, {}", sketch(a), temperature(a.device.temperature.si())),
         width,
     ));
     let mut body = Vec::new();
@@ -264,9 +308,28 @@ pub fn summary_rows(a: &Assessment, width: usize) -> Vec<String> {
     }
     let found = a.goals.first().map(|g| g.half_metal).or(a.default_half_metal);
     if let Some(found) = found {
-        row("without a barrier", half_metal_text(a, found));
+        let label = if has_barrier(a) { "without a barrier" } else { "without that resistance" };
+        row(label, half_metal_text(a, found));
     }
     head.into_iter().chain(body).chain(inputs_row(a, width)).collect()
+}
+
+/// Whether what stands at the channel is a tunnel barrier or nothing yet, rather than a direct interface
+/// between metals.
+fn has_barrier(a: &Assessment) -> bool {
+    let direct = |i: &usize| {
+        a.device.name(Position::Element(*i)).is_some_and(|n| n.path.ends_with("interface"))
+            && a.blueprint.interface(*i).is_some_and(|x| x.spin_resistance.si() > 0.0)
+    };
+    !a.device.channel_contacts.iter().any(direct)
+}
+
+/// Findings that a row of the short answer already tells.
+fn is_told(f: &crate::studies::findings::Finding) -> bool {
+    matches!(
+        f.rule_name(),
+        "conductivity-mismatch" | "outside-window" | "goal-out-of-reach" | "window-unknown"
+    )
 }
 
 fn short_name(target: Target) -> &'static str {
@@ -279,8 +342,8 @@ fn short_name(target: Target) -> &'static str {
 
 /// As many whole findings as fit; the last line says how many are left.
 fn findings_within(a: &Assessment, width: usize, room: usize) -> Vec<String> {
-    let blocks: Vec<Vec<String>> = a
-        .findings
+    let untold: Vec<_> = a.findings.iter().filter(|f| !is_told(f)).collect();
+    let blocks: Vec<Vec<String>> = untold
         .iter()
         .map(|f| marked(severity_mark(f.severity()), &finding(f), width))
         .collect();
@@ -298,7 +361,7 @@ fn findings_within(a: &Assessment, width: usize, room: usize) -> Vec<String> {
         shown += 1;
     }
     if room > 0 {
-        let left = a.findings.len() - shown;
+        let left = untold.len() - shown;
         let noun = if left == 1 { "finding" } else { "findings" };
         lines.push(format!(" ! {left} more {noun}: see --full"));
     }

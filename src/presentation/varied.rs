@@ -2,7 +2,7 @@
 
 use crate::devices::vertical::Outcome;
 use crate::quantities::kind::Scale;
-use crate::quantities::print::with_digits;
+use crate::quantities::print::{number_in, trade_unit};
 use crate::studies::vary::Varied;
 
 use super::full::{table, table_lines};
@@ -50,20 +50,46 @@ pub fn columns(v: &Varied) -> Vec<Column> {
         .collect()
 }
 
-/// As a table.
+/// As a table: one unit a column, told in its head.
 #[must_use]
 pub fn lines(v: &Varied, width: usize) -> Vec<String> {
     let columns = columns(v);
-    let mut head = vec![v.variation.path.as_str()];
-    head.extend(columns.iter().map(|c| c.head));
-    let right: Vec<usize> = (0..head.len()).collect();
-    let mut t = table(&head, width, &right);
-    for (row, text) in v.rows.iter().zip(&v.variation.points) {
-        let mut cells = vec![text.clone()];
-        cells.extend(columns.iter().map(|c| with_digits(row.outcome[c.index], c.scale, DIGITS)));
-        t.add_row(cells);
+    let typed_unit = common_unit(&v.variation.points);
+    let key = v.variation.path.rsplit('.').next().unwrap_or("").replace('_', " ");
+    let mut head = vec![format!("{key}\n{typed_unit}")];
+    let mut units = Vec::new();
+    for c in &columns {
+        let mut sizes: Vec<f64> = v.rows.iter().map(|r| r.outcome[c.index].abs()).collect();
+        sizes.sort_by(f64::total_cmp);
+        let middle = sizes.get(sizes.len() / 2).copied().unwrap_or(0.0);
+        let (unit, factor) = trade_unit(middle, c.scale);
+        head.push(format!("{}\n{unit}", c.head));
+        units.push(factor);
     }
-    table_lines(&t)
+    let heads: Vec<&str> = head.iter().map(String::as_str).collect();
+    let right: Vec<usize> = (0..head.len()).collect();
+    let mut t = table(&heads, width, &right);
+    for (row, text) in v.rows.iter().zip(&v.variation.points) {
+        let number = text.strip_suffix(&typed_unit).unwrap_or(text).trim();
+        let mut cells = vec![number.to_owned()];
+        cells.extend(
+            columns.iter().zip(&units).map(|(c, f)| number_in(row.outcome[c.index], *f, DIGITS)),
+        );
+        t.add_row(cells.iter().map(|c| c.replace(' ', "\u{a0}")).collect::<Vec<_>>());
+    }
+    let mut lines = vec![format!("along {}", v.variation.path)];
+    lines.extend(table_lines(&t));
+    lines
+}
+
+/// The unit that all points were typed in.
+fn common_unit(points: &[String]) -> String {
+    points
+        .first()
+        .and_then(|p| p.split_once(' '))
+        .map(|(_, unit)| unit.to_owned())
+        .filter(|unit| points.iter().all(|p| p.ends_with(unit.as_str())))
+        .unwrap_or_default()
 }
 
 /// As CSV in SI units; the unit stands in the head. Numbers are written so that reading them back gives

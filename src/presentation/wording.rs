@@ -6,11 +6,8 @@ use crate::quantities::kind::Scale;
 use crate::quantities::print::with_digits;
 use crate::studies::findings::{Finding, Severity};
 
-use super::numbers::{area, factor, of_target, percent, result, voltage, window};
+use super::numbers::{area, factor, of_target, percent, result, temperature, voltage, window};
 
-fn kelvin(t: f64) -> String {
-    format!("{t}\u{a0}K")
-}
 
 /// The mark in front of a finding.
 #[must_use]
@@ -75,14 +72,18 @@ pub fn finding(f: &Finding) -> String {
         Finding::OutsideWindow { window: w } => {
             let nearest: Vec<String> = w.intervals.iter().map(|i| window(i.low, i.high)).collect();
             let how = position(w);
+            if w.here.si() <= 0.0 {
+                return format!("The contact has no resistance of its own; the window is {}.", nearest.join(" and "));
+            }
             format!("RA of {} is outside the window, {}{how}.", area(w.here.si()), nearest.join(" and "))
         }
         Finding::WindowUnknown => "No window: γ of a barrier is not known for this pair. State `interface_asymmetry` in a barrier to get one.".to_owned(),
         Finding::BareSemiconductor { ferromagnet, channel } => format!(
             "{ferromagnet} bare on {channel}: a depletion region forms there. The ohmic answer is a hypothetical limit, not what a grown contact does."
         ),
-        Finding::BorrowedAsymmetry { name, record, polarization, asymmetry } => format!(
-            "γ = {asymmetry:.2} of {name} is borrowed: the tunnel polarization {polarization:.2} of {record} is an upper guide; a quarter of it to all of it is taken (our estimate)."
+        Finding::BorrowedAsymmetry { names, record, polarization, asymmetry } => format!(
+            "γ = {asymmetry:.2} of {} is borrowed: the tunnel polarization {polarization:.2} of {record} is an upper guide; a quarter of it to all of it is taken (our estimate).",
+            names.iter().map(|n| n.trim_end_matches(".interface_asymmetry")).collect::<Vec<_>>().join(", ")
         ),
         Finding::LongChannel { thickness, length } => format!(
             "The channel, {}, is {} times its spin diffusion length: the second contact hears little of the first.",
@@ -97,14 +98,14 @@ pub fn finding(f: &Finding) -> String {
             result(thickness.si(), Scale::Length)
         ),
         Finding::TemperatureOutsideData { inputs, wanted } => {
-            let mut temperatures: Vec<String> = inputs.iter().map(|(_, t)| kelvin(*t)).collect();
+            let mut temperatures: Vec<String> = inputs.iter().map(|(_, t)| temperature(*t)).collect();
             temperatures.dedup();
             format!(
                 "{} of {} used at {}: {}.",
                 if inputs.len() == 1 { "A value".to_owned() } else { format!("{} values", inputs.len()) },
                 temperatures.join(", "),
-                kelvin(*wanted),
-                names(inputs.iter().map(|(n, _)| n.as_str()))
+                temperature(*wanted),
+                grouped(inputs.iter().map(|(n, _)| n.as_str()))
             )
         }
         Finding::DopingOutsideData { inputs, wanted } => {
@@ -116,7 +117,7 @@ pub fn finding(f: &Finding) -> String {
         }
         Finding::MemoryLossOutsideTemperature { record, wanted } => format!(
             "The spin-memory loss of {} is used at {}: a loss fitted cold is not a warm default.",
-            kelvin(*record), kelvin(*wanted)
+            temperature(*record), temperature(*wanted)
         ),
         Finding::AsymmetryNearOne { name, value } => format!(
             "{name} = {value:.2} is within its uncertainty of one, where r_F diverges: the answer is not bounded by it."
@@ -148,13 +149,26 @@ pub fn finding(f: &Finding) -> String {
     }
 }
 
-fn names<'a>(all: impl Iterator<Item = &'a str>) -> String {
-    all.collect::<Vec<_>>().join(", ")
+/// Names of inputs with the part they share said once: `channel: resistivity, thickness`.
+fn grouped<'a>(all: impl Iterator<Item = &'a str>) -> String {
+    let mut groups: Vec<(String, Vec<String>)> = Vec::new();
+    for name in all {
+        let (part, key) = name.rsplit_once('.').unwrap_or(("", name));
+        let key = key.replace('_', " ");
+        match groups.last_mut() {
+            Some((p, keys)) if p == part => keys.push(key),
+            _ => groups.push((part.to_owned(), vec![key])),
+        }
+    }
+    groups.iter().map(|(p, k)| format!("{p}: {}", k.join(", "))).collect::<Vec<_>>().join("; ")
 }
 
 /// A share as a whole per cent.
 #[must_use]
 pub fn percent_share(share: f64) -> String {
+    if share > 0.0 && share < 0.005 {
+        return "<\u{a0}1\u{a0}%".to_owned();
+    }
     format!("{:.0}\u{a0}%", 100.0 * share)
 }
 
@@ -163,16 +177,16 @@ pub fn percent_share(share: f64) -> String {
 pub fn position(w: &crate::studies::window::Window) -> String {
     let here = w.here.si();
     if w.intervals.iter().any(|i| i.holds(w.here)) {
-        return ": inside".to_owned();
+        return ", inside".to_owned();
     }
     let below = w.intervals.iter().filter_map(|i| i.low).map(|l| l.si()).filter(|l| *l > here).fold(f64::INFINITY, f64::min);
     let above = w.intervals.iter().filter_map(|i| i.high).map(|h| h.si()).filter(|h| *h < here).fold(0.0, f64::max);
     if here <= 0.0 {
         String::new()
     } else if below.is_finite() && (above <= 0.0 || below / here < here / above) {
-        format!(": {} times too low", factor(below / here))
+        format!(", {} times too low", factor(below / here))
     } else if above > 0.0 {
-        format!(": {} times too high", factor(here / above))
+        format!(", {} times too high", factor(here / above))
     } else {
         String::new()
     }
@@ -187,7 +201,7 @@ pub fn mark(m: &Mark) -> String {
         Mark::Estimated => "our estimate".to_owned(),
         Mark::CommonPractice => "common practice".to_owned(),
         Mark::OtherTemperature { record, wanted } => {
-            format!("{} value used at {}", kelvin(*record), kelvin(*wanted))
+            format!("{} value used at {}", temperature(*record), temperature(*wanted))
         }
         Mark::TemperatureNotStated => "its temperature is not stated beside it".to_owned(),
         Mark::OtherDoping { record, .. } => {

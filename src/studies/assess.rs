@@ -404,6 +404,24 @@ fn find_layers(a: &Assessment, design: &Design, library: &Library, out: &mut Vec
     }
 }
 
+/// One finding a record, however many contacts borrow from it.
+fn borrowed(out: &mut Vec<Finding>, input: &str, from: &str, polarization: f64, asymmetry: f64) {
+    for finding in out.iter_mut() {
+        if let Finding::BorrowedAsymmetry { names, record, .. } = finding
+            && record == from
+        {
+            names.push(input.to_owned());
+            return;
+        }
+    }
+    out.push(Finding::BorrowedAsymmetry {
+        names: vec![input.to_owned()],
+        record: from.to_owned(),
+        polarization,
+        asymmetry,
+    });
+}
+
 fn find_inputs(a: &Assessment, out: &mut Vec<Finding>) {
     let inputs: Vec<&Input> =
         a.device.table.inputs().iter().chain(a.device.likely.as_ref().map(|l| &l.input)).collect();
@@ -422,12 +440,9 @@ fn find_inputs(a: &Assessment, out: &mut Vec<Finding>) {
                     dopings.push((input.name.clone(), *record));
                     wanted_doping = *wanted;
                 }
-                Mark::Borrowed { polarization } => out.push(Finding::BorrowedAsymmetry {
-                    name: input.name.clone(),
-                    record: record.clone(),
-                    polarization: *polarization,
-                    asymmetry: input.reading.si,
-                }),
+                Mark::Borrowed { polarization } => {
+                    borrowed(out, &input.name, &record, *polarization, input.reading.si);
+                }
                 Mark::NearUnity if input.name.ends_with("bulk_asymmetry") => {
                     out.push(Finding::AsymmetryNearOne {
                         name: input.name.clone(),

@@ -107,8 +107,8 @@ pub enum Finding {
     },
     /// γ is borrowed.
     BorrowedAsymmetry {
-        /// Input.
-        name: String,
+        /// Inputs.
+        names: Vec<String>,
         /// Record it is borrowed from.
         record: String,
         /// Tunnel polarization there.

@@ -1,3 +1,10 @@
 //! The test suite: one binary, one module a question.
 
+mod bare;
+mod common_practice;
+mod compare;
+mod limits;
+mod outside;
+mod published;
 mod quantities;
+mod second_road;
