@@ -3,6 +3,39 @@
 //! Ω·m² is the unit of a resistance-area product, of a spin resistance and of an interface spin
 //! resistance; a dimension check passes a mix-up of the three. Each meaning is its own type here and
 //! the few lawful conversions are named functions.
+//!
+//! A resistance-area product is not an interface spin resistance:
+//! ```compile_fail
+//! use injectance::quantities::dimensions::Measured;
+//! use injectance::quantities::meanings::{InterfaceSpinResistance, ResistanceAreaProduct};
+//! let ra = ResistanceAreaProduct::from_si(1e-11);
+//! let r_b: InterfaceSpinResistance = ra;
+//! ```
+//! β and γ are not interchangeable:
+//! ```compile_fail
+//! use injectance::quantities::dimensions::Measured;
+//! use injectance::quantities::meanings::{BulkAsymmetry, InterfaceSpinResistance, ResistanceAreaProduct};
+//! let ra = ResistanceAreaProduct::from_si(1e-11);
+//! let r_b = InterfaceSpinResistance::from_resistance_area(ra, BulkAsymmetry::from_si(0.4));
+//! ```
+//! The half splitting (a voltage) is not the full one (an energy):
+//! ```compile_fail
+//! use injectance::quantities::dimensions::Measured;
+//! use injectance::quantities::meanings::{SpinAccumulation, SpinSplitting};
+//! let full: SpinSplitting = SpinAccumulation::from_si(1e-3);
+//! ```
+//! The lawful way round:
+//! ```
+//! use injectance::quantities::dimensions::Measured;
+//! use injectance::quantities::meanings::{
+//!     InterfaceAsymmetry, InterfaceSpinResistance, ResistanceAreaProduct, SpinAccumulation, SpinSplitting,
+//! };
+//! let ra = ResistanceAreaProduct::from_si(1e-11); // 10 Ω µm²
+//! let r_b = InterfaceSpinResistance::from_resistance_area(ra, InterfaceAsymmetry::from_si(0.6));
+//! assert!((r_b.si() / (1e-11 / 0.64) - 1.0).abs() < 1e-15);
+//! let full = SpinSplitting::from(SpinAccumulation::from_si(1e-3)); // 1 mV is 2 meV
+//! assert!((full.si() / (2.0 * 1.602176634e-22) - 1.0).abs() < 1e-15);
+//! ```
 
 use super::dimensions::{
     Dimension, ElectricPotential, ElectricalResistance, ElectricalResistivity, Energy, Length,

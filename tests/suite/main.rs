@@ -3,8 +3,10 @@
 mod bare;
 mod common_practice;
 mod compare;
+mod library;
 mod limits;
 mod outside;
 mod published;
 mod quantities;
+mod rooms;
 mod second_road;
