@@ -334,7 +334,7 @@ impl Work<'_> {
         };
         let (resistivity, asymmetry, length) = match (&material, given_rho, given_beta, given_length) {
             (_, Some(rho), Some(beta), Some(length)) => (rho, beta, length),
-            (Some(m), rho, beta, length) => self.from_pair(m, spec, rho, beta, length)?,
+            (Some(m), rho, beta, length) => self.pair_of(m, spec, rho, beta, length)?,
             (None, rho, beta, length) => {
                 if rho.is_none() {
                     self.explicit_missing(spec, "resistivity", "60 nΩ m");
@@ -360,7 +360,7 @@ impl Work<'_> {
     }
 
     #[allow(clippy::type_complexity)]
-    fn from_pair(
+    fn pair_of(
         &mut self,
         material: &Material,
         spec: &LayerSpec,

@@ -28,7 +28,7 @@ const HEADS: [(&str, Scale, bool); Outcome::COLUMNS.len()] = [
     ("p antiparallel", Scale::Percent, true),
     ("u/j", Scale::ResistanceArea, false),
     ("u/j antiparallel", Scale::ResistanceArea, true),
-    ("RA", Scale::ResistanceArea, false),
+    ("stack RA", Scale::ResistanceArea, false),
     ("ΔRA", Scale::ResistanceArea, true),
     ("MR", Scale::Percent, true),
 ];

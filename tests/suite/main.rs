@@ -8,5 +8,6 @@ mod limits;
 mod outside;
 mod published;
 mod quantities;
+mod readme;
 mod rooms;
 mod second_road;
