@@ -75,8 +75,10 @@ fn whole(text: &str) -> String {
     text.replace(' ', "\u{a0}")
 }
 
-fn heading(text: &str) -> Vec<String> {
-    vec![String::new(), text.to_owned()]
+fn heading(text: &str, width: usize) -> Vec<String> {
+    let mut lines = vec![String::new()];
+    lines.extend(wrap(text, width));
+    lines
 }
 
 fn plain(text: &str) -> String {
@@ -116,7 +118,7 @@ fn source_of(a: &Assessment, input: &Input) -> String {
 /// One line an input: name, value with spread, share. Inputs that follow each other and come from the same
 /// place are told it once, below them.
 fn inputs(a: &Assessment, width: usize) -> Vec<String> {
-    let mut lines = heading("Design as understood: value, share of the answer's spread, where it comes from");
+    let mut lines = heading("Design as understood: value, share of the answer's spread, where it comes from", width);
     let mut all: Vec<(&Input, String)> = a
         .device
         .table
@@ -186,7 +188,7 @@ fn end_word(end: &EndPlan) -> Option<&'static str> {
 }
 
 fn stack(a: &Assessment, width: usize) -> Vec<String> {
-    let mut lines = heading(&format!("Stack, from left to right (written as {})", summary::written(a.written)));
+    let mut lines = heading(&format!("Stack, from left to right (written as {})", summary::written(a.written)), width);
     let mut t = table(
         &["element", "ρ or RA", "λ or δ", "t", "β or γ", "r or r_b*", "magnet"],
         width,
@@ -248,7 +250,7 @@ fn stack(a: &Assessment, width: usize) -> Vec<String> {
 
 fn resistances(a: &Assessment, width: usize) -> Vec<String> {
     let Some(m) = &a.mismatch else { return Vec::new() };
-    let mut lines = heading("Spin resistances at the injector");
+    let mut lines = heading("Spin resistances at the injector", width);
     let mut row = |label: &str, value: String| lines.extend(labelled(label, &value, width));
     row("r_F of the ferromagnet", area(m.r_ferromagnet.si()));
     row("r_N of the channel", format!(
@@ -308,7 +310,7 @@ fn potentials(a: &Assessment, width: usize) -> Vec<String> {
     };
     for (name, faces) in states {
         let state = if name.is_empty() { String::new() } else { format!(", {name}") };
-        lines.extend(heading(&format!("Electrochemical potentials at the faces{state}, at {told}")));
+        lines.extend(heading(&format!("Electrochemical potentials at the faces{state}, at {told}"), width));
         let mut t = table(&["face", "p = J/j", "u = (V↑−V↓)/2", "V↑", "V↓"], width, &[1, 2, 3, 4]);
         for (k, f) in faces.iter().enumerate() {
             let u = f.accumulation_per_current_density.si() * j;
@@ -330,7 +332,7 @@ fn contact_windows(a: &Assessment, width: usize) -> Vec<String> {
     if a.contact_windows.is_empty() {
         return Vec::new();
     }
-    let mut lines = heading("Window of each contact alone, the others as they are");
+    let mut lines = heading("Window of each contact alone, the others as they are", width);
     for (element, w) in &a.contact_windows {
         let name = a.device.name(Position::Element(*element)).map_or(String::new(), |n| n.path.clone());
         lines.extend(labelled(&name, &summary::window_text(a, w), width));
@@ -342,7 +344,7 @@ fn checks(a: &Assessment, width: usize) -> Vec<String> {
     if a.checks.is_empty() {
         return Vec::new();
     }
-    let mut lines = heading("Published values of this contact, shown beside the answer and never fed to it");
+    let mut lines = heading("Published values of this contact, shown beside the answer and never fed to it", width);
     for c in &a.checks {
         let footnote = c
             .source
@@ -358,7 +360,7 @@ fn checks(a: &Assessment, width: usize) -> Vec<String> {
 }
 
 fn findings(a: &Assessment, width: usize) -> Vec<String> {
-    let mut lines = heading("Findings");
+    let mut lines = heading("Findings", width);
     if a.findings.is_empty() {
         lines.push("none".to_owned());
     }
@@ -372,7 +374,7 @@ fn sources(a: &Assessment, width: usize) -> Vec<String> {
     if a.references.is_empty() {
         return Vec::new();
     }
-    let mut lines = heading("Sources");
+    let mut lines = heading("Sources", width);
     for (i, (key, reference)) in a.references.iter().enumerate() {
         let text = reference.as_ref().map_or_else(|| key.clone(), |r| r.full.clone());
         lines.extend(marked(&format!("[{}]", i + 1), &text, width));

@@ -245,7 +245,7 @@ fn window(a: &Assessment, w: &Result<Window, NoWindow>, from: &[String]) -> Valu
                     "low": edge(i.low.map(Measured::si)),
                     "high": edge(i.high.map(Measured::si)),
                 })).collect::<Vec<_>>(),
-                "fraction_of_best": w.fraction,
+                "fraction_of_best": w.fraction.map(|f| number(f, "1", &[], false)),
                 "best": {
                     "value": number(w.best.value, unit, from, false),
                     "at": edge(w.best.at.map(Measured::si)),
@@ -372,13 +372,20 @@ fn faces(a: &Assessment, from: &[String], strained: bool) -> Value {
     Value::Object(out)
 }
 
-fn spread(s: &Spread) -> Value {
+fn spread(s: &Spread, unit: &'static str) -> Value {
+    let n = |x: f64| number(x, unit, &[], false);
     match s {
         Spread::Exact => json!({ "kind": "exact" }),
-        Spread::Normal { sd } => json!({ "kind": "normal", "standard_deviation": sd }),
-        Spread::Asymmetric { minus, plus } => json!({ "kind": "asymmetric", "minus": minus, "plus": plus }),
-        Spread::LogNormal { factor } => json!({ "kind": "log-normal", "factor": factor }),
-        Spread::Uniform { low, high } => json!({ "kind": "uniform", "low": low, "high": high }),
+        Spread::Normal { sd } => json!({ "kind": "normal", "standard_deviation": n(*sd) }),
+        Spread::Asymmetric { minus, plus } => {
+            json!({ "kind": "asymmetric", "minus": n(*minus), "plus": n(*plus) })
+        }
+        Spread::LogNormal { factor } => {
+            json!({ "kind": "log-normal", "factor": number(*factor, "1", &[], false) })
+        }
+        Spread::Uniform { low, high } => {
+            json!({ "kind": "uniform", "low": n(*low), "high": n(*high) })
+        }
         Spread::Bound { side } => json!({ "kind": "bound", "value_is": match side {
             Side::Above => "above",
             Side::Below => "below",
@@ -407,9 +414,9 @@ fn inputs(a: &Assessment) -> Vec<Value> {
                 "name": input.name,
                 "quantity": input.kind.name,
                 "value": number(input.reading.si, si_unit(input.kind.scale), &ids, false),
-                "spread": spread(&input.reading.spread),
+                "spread": spread(&input.reading.spread, si_unit(input.kind.scale)),
                 "as_written": input.reading.text,
-                "share": a.shares.iter().find(|s| s.column == i).map(|s| s.share),
+                "share": a.shares.iter().find(|s| s.column == i).map(|s| number(s.share, "1", &[], false)),
                 "origin": origin,
                 "marks": input.provenance.marks.iter().map(|m| mark(m).replace('\u{a0}', " ")).collect::<Vec<_>>(),
             })
@@ -427,9 +434,9 @@ fn honesty(a: &Assessment) -> Value {
         "without_spread": h.not_spread,
         "carry_most": h.carriers.iter().map(|s| json!({
             "name": a.device.table.inputs()[s.column].name,
-            "share": s.share,
+            "share": number(s.share, "1", &[], false),
         })).collect::<Vec<_>>(),
-        "share_of_recalled_and_assumed": h.doubtful_share,
+        "share_of_recalled_and_assumed": number(h.doubtful_share, "1", &[], false),
         "text": summary::honesty(a).replace('\u{a0}', " "),
     })
 }

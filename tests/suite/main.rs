@@ -3,6 +3,7 @@
 mod bare;
 mod common_practice;
 mod compare;
+mod demos;
 mod library;
 mod limits;
 mod outside;
