@@ -30,17 +30,17 @@ pub fn wrap(text: &str, width: usize) -> Vec<String> {
     lines.iter().map(|l| l.replace('\u{a0}', " ")).collect()
 }
 
-/// A label and a value, the value wrapped under itself.
+/// A label and a value, the value wrapped under itself; a label too long for its column has a line of its
+/// own.
 #[must_use]
 pub fn labelled(label: &str, value: &str, width: usize) -> Vec<String> {
-    wrap(value, width.saturating_sub(LABEL))
-        .into_iter()
-        .enumerate()
-        .map(|(i, line)| {
-            let left = if i == 0 { label } else { "" };
-            format!("{left:<LABEL$}{line}").trim_end().to_owned()
-        })
-        .collect()
+    let long = width_of(label) >= LABEL;
+    let mut lines: Vec<String> = if long { vec![label.to_owned()] } else { Vec::new() };
+    for (i, line) in wrap(value, width.saturating_sub(LABEL)).into_iter().enumerate() {
+        let left = if i == 0 && !long { label } else { "" };
+        lines.push(format!("{left:<LABEL$}{line}").trim_end().to_owned());
+    }
+    lines
 }
 
 /// A text with a mark in front, wrapped under itself.

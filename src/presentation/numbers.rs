@@ -4,7 +4,7 @@ use crate::designs::goals::{Comparison, Target};
 use crate::quantities::dimensions::Measured;
 use crate::quantities::kind::Scale;
 use crate::quantities::meanings::ResistanceAreaProduct;
-use crate::quantities::print::with_digits;
+use crate::quantities::print::{number_in, trade_unit, with_digits};
 
 use super::lines::joined;
 
@@ -21,6 +21,28 @@ pub fn result(si: f64, scale: Scale) -> String {
 #[must_use]
 pub fn area(si: f64) -> String {
     result(si, Scale::ResistanceArea)
+}
+
+/// Several resistance-area products that belong together, in one unit where they lie within five decades.
+#[must_use]
+pub fn areas(all: &[f64]) -> Vec<String> {
+    let sizes: Vec<f64> = all.iter().map(|x| x.abs()).filter(|x| *x > 0.0 && x.is_finite()).collect();
+    let low = sizes.iter().copied().fold(f64::INFINITY, f64::min);
+    let high = sizes.iter().copied().fold(0.0, f64::max);
+    if !(low.is_finite() && high / low < 1e5) {
+        return all.iter().map(|x| area(*x)).collect();
+    }
+    // The unit of the geometric middle keeps both ends readable.
+    let (unit, factor) = trade_unit((low * high).sqrt(), Scale::ResistanceArea);
+    all.iter().map(|x| joined(&format!("{} {unit}", number_in(*x, factor, DIGITS)))).collect()
+}
+
+/// A pure number such as β or γ with two digits behind the point.
+#[must_use]
+pub fn asymmetry(x: f64) -> String {
+    let near = x.abs() > 0.995 && x.abs() < 1.0;
+    let text = if near { format!("{x:.5}") } else { format!("{x:.2}") };
+    text.replace('-', "\u{2212}")
 }
 
 /// A polarization or a ratio in per cent.
@@ -55,10 +77,11 @@ pub fn factor(x: f64) -> String {
 /// 1 − β as people write it: `0.956` far from one, `1 − 1.2×10⁻⁴` near it.
 #[must_use]
 pub fn near_one(short_of_one: f64) -> String {
-    if short_of_one < 0.01 {
+    if short_of_one < 1e-3 {
         format!("1\u{a0}−\u{a0}{}", joined(&with_digits(short_of_one, Scale::Plain, 2)))
     } else {
-        format!("{:.3}", 1.0 - short_of_one)
+        let digits = if short_of_one < 0.01 { 4 } else { 3 };
+        format!("{:.digits$}", 1.0 - short_of_one)
     }
 }
 
@@ -108,9 +131,15 @@ pub fn tidy(text: &str) -> String {
 #[must_use]
 pub fn window(low: Option<ResistanceAreaProduct>, high: Option<ResistanceAreaProduct>) -> String {
     match (low, high) {
-        (Some(l), Some(h)) => format!("{} .. {}", area(l.si()), area(h.si())),
+        (Some(l), Some(h)) => areas(&[l.si(), h.si()]).join(" .. "),
         (Some(l), None) => format!("≥\u{a0}{}, upper edge none", area(l.si())),
         (None, Some(h)) => format!("≤\u{a0}{}, lower edge none", area(h.si())),
-        (None, None) => "any, edges none".to_owned(),
+        (None, None) => "any RA, edges none".to_owned(),
     }
+}
+
+/// How far x is from an edge: `12 times`, `3 %`, `0.2 %`.
+#[must_use]
+pub fn times(ratio: f64) -> String {
+    if ratio < 1.1 { percent(ratio - 1.0) } else { format!("{} times", factor(ratio)) }
 }

@@ -104,6 +104,7 @@ const CURRENT_DENSITY: Ladder = Ladder {
 };
 const VOLTAGE: Ladder = several(
     &[
+        step("pV", -12, 0),
         step("nV", -9, 0),
         step("µV", -6, -6),
         step("mV", -3, -3),

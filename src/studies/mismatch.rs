@@ -36,8 +36,9 @@ pub struct Mismatch {
     pub measured: ResistanceAreaProduct,
     /// t/λ of the channel where it has a thickness.
     pub reduced_length: Option<f64>,
-    /// Time an electron stays between two contacts over its spin lifetime, r_b* t/(2 r_N λ), where there are
-    /// two contacts with resistance.
+    /// Time an electron stays between two contacts over its spin lifetime, (r_1 ∥ r_2) t/(r_N λ) with r the
+    /// spin resistances of the two interfaces: it leaves through the less resistive one. Only where there
+    /// are two contacts with resistance.
     ///
     /// Source: Fert, George, Jaffrès, Mattana, IEEE Trans. Electron Devices 54, 921 (2007) [abstract read];
     /// the factor is derived from the high-resistance limit of the two-contact formula.
@@ -81,9 +82,21 @@ pub fn mismatch(device: &Vertical, blueprint: &Blueprint) -> Result<Option<Misma
             r_interface.as_measured(asymmetry, p)
         }),
         reduced_length: t.is_finite().then(|| t / n.length.si()),
-        dwell: (device.channel_contacts.len() > 1 && t.is_finite() && r_interface.si() > 0.0)
-            .then(|| r_interface.si() * t / (2.0 * n.spin_resistance().si() * n.length.si())),
+        dwell: dwell(device, blueprint, t / n.length.si(), n.spin_resistance()),
     }))
+}
+
+fn dwell(
+    device: &Vertical,
+    blueprint: &Blueprint,
+    reduced_length: f64,
+    r_channel: SpinResistance,
+) -> Option<f64> {
+    let [first, second] = device.channel_contacts.as_slice() else { return None };
+    let r = |i: usize| blueprint.interface(i).map(|x| x.spin_resistance.si());
+    let (a, b) = (r(*first)?, r(*second)?);
+    (reduced_length.is_finite() && a > 0.0 && b > 0.0)
+        .then(|| a * b / (a + b) * reduced_length / r_channel.si())
 }
 
 /// The bulk asymmetry that would meet a demand without a barrier.

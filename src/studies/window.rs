@@ -17,6 +17,8 @@ use super::target::{Demand, Wish};
 /// Smallest and largest resistance-area product looked at, Ω m²: 10⁻⁸ Ω µm² to 10¹⁶ Ω µm².
 const SMALLEST: f64 = 1e-20;
 const LARGEST: f64 = 1e4;
+/// A best value this near the largest product is the limit of an infinite one.
+const FLAT: f64 = 1e-2;
 const POINTS_A_DECADE: usize = 24;
 /// Edges are found to this fraction of the product.
 const EDGE_TOLERANCE: f64 = 1e-12;
@@ -177,7 +179,7 @@ pub fn window(
         intervals,
         best: Best {
             value,
-            at: (at < LARGEST * 0.999).then(|| ResistanceAreaProduct::from_si(at)),
+            at: (at < LARGEST * FLAT).then(|| ResistanceAreaProduct::from_si(at)),
         },
         here: ResistanceAreaProduct::from_si(here),
         contact: reference,
@@ -191,7 +193,12 @@ pub fn window(
 fn follow(scaled: &Scaled<'_>) -> Result<Vec<(f64, f64)>, StackFault> {
     let decades = (LARGEST / SMALLEST).log10().round() as usize;
     let count = decades * POINTS_A_DECADE;
-    let mut grid = vec![(0.0, scaled.value(0.0)?)];
+    // With spin-memory loss a vanishing product is a spin sink, while none at all is no interface: the two
+    // do not join, so the window begins at the smallest product looked at.
+    let lossy = scaled.contacts.iter().any(|(i, _, _)| {
+        scaled.base.interface(*i).is_some_and(|x| x.memory_loss.si() > 0.0)
+    });
+    let mut grid = if lossy { Vec::new() } else { vec![(0.0, scaled.value(0.0)?)] };
     for i in 0..=count {
         let ra = SMALLEST * 10.0_f64.powf(i as f64 / POINTS_A_DECADE as f64);
         grid.push((ra, scaled.value(ra)?));
