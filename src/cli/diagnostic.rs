@@ -7,6 +7,7 @@ use miette::{
 };
 
 use crate::documents::fault::{Fault, Wrong};
+use crate::quantities::text::ReadFaultKind;
 
 use super::exit::Exit;
 use super::terminal::{coloured_diagnostics, complain, width};
@@ -53,11 +54,16 @@ fn listed(words: &[String]) -> String {
 /// Message, label under the value, help.
 fn words(wrong: &Wrong) -> (String, String, Option<String>) {
     match wrong {
-        Wrong::Syntax { reason } => ("this is not TOML".to_owned(), reason.clone(), None),
+        Wrong::Syntax { reason } => {
+            let help = reason.contains("must be quoted").then(|| {
+                "texts stand in quotes, and so does a number with its unit: `thickness = \"40 nm\"`".to_owned()
+            });
+            ("this is not TOML".to_owned(), reason.clone(), help)
+        }
         Wrong::File { reason, help } => (reason.clone(), String::new(), help.clone()),
         Wrong::UnknownKey { found, allowed, nearest } => (
             format!("unknown key `{found}`"),
-            "not a key of this table".to_owned(),
+            "not known here".to_owned(),
             Some(match nearest {
                 Some(n) => format!("did you mean `{n}`?"),
                 None => format!("keys here: {}", listed(allowed)),
@@ -67,7 +73,14 @@ fn words(wrong: &Wrong) -> (String, String, Option<String>) {
             (format!("`{key}` is missing"), "here".to_owned(), Some(help.clone()))
         }
         Wrong::Type { found, expected } => {
-            (format!("expected {expected}, found {found}"), format!("this is {found}"), None)
+            let help = match *expected {
+                "a table" => Some("a table is written `name = { key = \"…\" }`, or `[name]` with its keys below"),
+                "a list of tables" => Some("write `[[name]]` before each entry"),
+                "a text with number and unit" => Some("write number and unit in quotes, as in \"300 K\""),
+                "a list of texts" => Some("write `[\"…\", \"…\"]`"),
+                _ => None,
+            };
+            (format!("expected {expected}, found {found}"), format!("this is {found}"), help.map(str::to_owned))
         }
         Wrong::UnknownWord { what, found, allowed, nearest } => {
             let help = match (nearest, allowed.is_empty()) {
@@ -78,7 +91,16 @@ fn words(wrong: &Wrong) -> (String, String, Option<String>) {
             };
             (format!("unknown {what} `{found}`"), format!("no such {what}"), help)
         }
-        Wrong::Quantity { fault } => (fault.message(), "this value".to_owned(), fault.help()),
+        Wrong::Quantity { fault } => {
+            let label = match (&fault.at, &fault.what) {
+                (Some(_), ReadFaultKind::Unit(_) | ReadFaultKind::Dimension { .. } | ReadFaultKind::NotASpelling { .. }) => {
+                    "this unit"
+                }
+                (Some(_), ReadFaultKind::Spread { .. }) => "here",
+                _ => "this value",
+            };
+            (fault.message(), label.to_owned(), fault.help())
+        }
         Wrong::Conflict { reason, help } => (reason.clone(), "here".to_owned(), help.clone()),
         Wrong::NotInLibrary { what, exists, help } => {
             let near = if exists.is_empty() {

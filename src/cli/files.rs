@@ -83,13 +83,17 @@ fn reason(e: &std::io::Error) -> String {
 }
 
 fn too_large(size: Option<u64>) -> String {
-    let found = size.map_or_else(|| "more".to_owned(), |s| format!("{} MB", s / 1_000_000));
-    format!("is too large: {found}, where at most {} MB are read", MOST_BYTES / 1_000_000)
+    let found = size.map_or_else(String::new, |s| format!("{} MB, and ", s / 1_000_000));
+    format!("is too large: {found}at most {} MB are read", MOST_BYTES / 1_000_000)
 }
 
 /// Reads a design and lays settings over it.
 pub fn design_tree(path: &Path, settings: &[String], faults: &Faults) -> Option<Node> {
     let (name, text) = read_text(path).map_err(|f| faults.push(f)).ok()?;
+    if text.trim().is_empty() {
+        faults.push(file_fault(&name, "is empty".to_owned(), Some("begin with `injectance new vertical > first.toml`")));
+        return None;
+    }
     let source: Arc<Source> = Source::new(name, text);
     let mut root = match parse(&source) {
         Ok(root) => root,

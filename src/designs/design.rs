@@ -8,7 +8,7 @@ use crate::quantities::kind;
 use crate::quantities::text::Reading;
 use crate::quantities::unit::Context;
 
-use super::goals::{Goal, read_goals};
+use super::goals::{Goal, GoalState, Target, read_goals};
 use super::layers::{
     ContactSpec, EndWord, LayerSpec, MagnetizationWord, Role, read_contact, read_layer,
 };
@@ -115,14 +115,27 @@ pub fn read_design(root: &Node, library: &Library, faults: &Faults) -> Option<De
             None
         }
         (None, true) => long_form(&top, library, faults),
-        (Some(_), false) => short_form(&top, library, faults),
+        (Some(_), false) => {
+            if top.node("ends").is_some() {
+                let place = top.key_place("ends").unwrap_or_else(|| top.place().clone());
+                faults.push(conflict(
+                    &place,
+                    "ends",
+                    "[ends] goes with [[stack]]",
+                    "in short form a side ends by `end = \"…\"` of its ferromagnet or of the channel",
+                ));
+            }
+            short_form(&top, library, faults)
+        }
         (None, false) => {
+            top.node("ends");
             top.missing("injector", "a design has [injector] and [channel], perhaps [detector]; or [[stack]] with [ends]");
             None
         }
     };
     top.finish();
     let form = stack?;
+    check_states(&top, &goals, &form.parts, faults);
     Some(Design {
         name: root.place.source.name.clone(),
         title,
@@ -138,6 +151,38 @@ pub fn read_design(root: &Node, library: &Library, faults: &Faults) -> Option<De
         goals,
         place: root.place.clone(),
     })
+}
+
+/// Refuses goals on a second magnetic state where the design has none.
+fn check_states(top: &Reader<'_>, goals: &[Goal], parts: &[Part], faults: &Faults) {
+    let turns = |layer: &LayerSpec| layer.magnetization == Some(MagnetizationWord::Free);
+    let ferromagnets = || {
+        parts.iter().filter_map(|p| match p {
+            Part::Ferromagnet(layer) => Some(layer),
+            _ => None,
+        })
+    };
+    if ferromagnets().any(turns) && !ferromagnets().all(turns) {
+        return;
+    }
+    let help = "add a [detector], or in a [[stack]] one ferromagnet with `magnetization = \"free\"`";
+    for goal in goals.iter().filter(|g| g.target != Target::InjectedPolarization) {
+        faults.push(conflict(
+            &goal.place,
+            &format!("goal.{}", goal.target.word()),
+            "the design has one magnetic state, and this compares two",
+            help,
+        ));
+    }
+    let state = top.node("goal").and_then(|n| n.get("state"));
+    if let (Some(entry), Some(GoalState::Antiparallel)) = (state, goals.first().map(|g| g.state)) {
+        faults.push(conflict(
+            &entry.node.place,
+            "goal.state",
+            "the design has one magnetic state, no antiparallel one",
+            help,
+        ));
+    }
 }
 
 struct Form {
@@ -216,6 +261,7 @@ fn short_form(top: &Reader<'_>, library: &Library, faults: &Faults) -> Option<Fo
     } else {
         match &channel.end {
             Some(end) => (end.value, true),
+            None if faults.told("channel.end") || faults.told("channel") => return None,
             None => {
                 faults.push(Fault {
                     place: Some(channel.place.clone()),
@@ -249,9 +295,13 @@ fn short_form(top: &Reader<'_>, library: &Library, faults: &Faults) -> Option<Fo
 }
 
 fn missing_thickness(layer: &LayerSpec, help: &str, faults: &Faults) {
+    let field = format!("{}.thickness", layer.path);
+    if faults.told(&field) || faults.told(&layer.path) {
+        return;
+    }
     faults.push(Fault {
         place: Some(layer.place.clone()),
-        field: format!("{}.thickness", layer.path),
+        field,
         wrong: Wrong::Missing {
             key: "thickness".to_owned(),
             help: format!("{help}: `thickness = \"40 nm\"`"),
@@ -274,18 +324,21 @@ fn long_form(top: &Reader<'_>, library: &Library, faults: &Faults) -> Option<For
     if ends.is_none() && !top.has("ends") {
         top.missing("ends", "add `[ends]` with `left` and `right`: semi-infinite, spin sink, reflecting or fed in plane");
     }
-    let ends = ends?;
     let mut words = [None, None];
-    for (word, key) in words.iter_mut().zip(["left", "right"]) {
-        if !ends.has(key) {
-            ends.node(key);
-            ends.missing(key, "semi-infinite, spin sink, reflecting or fed in plane");
-        } else {
-            *word = ends.word(key, "end", EndWord::WORDS).map(|w| w.value);
+    if let Some(ends) = ends {
+        for (word, key) in words.iter_mut().zip(["left", "right"]) {
+            if !ends.has(key) {
+                ends.node(key);
+                ends.missing(key, "semi-infinite, spin sink, reflecting or fed in plane");
+            } else {
+                *word = ends.word(key, "end", EndWord::WORDS).map(|w| w.value);
+            }
         }
+        ends.finish();
     }
-    ends.finish();
     let mut parts: Vec<Part> = Vec::new();
+    // Whether each entry is one layer or interface; else nothing is said about their order.
+    let mut understood = true;
     for (i, entry) in top.tables("stack").iter().enumerate() {
         let path = format!("stack.{}", i + 1);
         let kinds = ["ferromagnet", "normal", "barrier", "interface"];
@@ -295,12 +348,16 @@ fn long_form(top: &Reader<'_>, library: &Library, faults: &Faults) -> Option<For
         }
         entry.finish();
         let [only] = present.as_slice() else {
-            faults.push(conflict(
-                entry.place(),
-                &path,
-                "an entry of the stack is exactly one of ferromagnet, normal, barrier or interface",
-                "for example `[[stack]]` then `normal = { material = \"copper\", thickness = \"20 nm\" }`",
-            ));
+            understood = false;
+            // An unknown key in place of the four was reported above, with what is known.
+            if !present.is_empty() || entry.is_empty_table() {
+                faults.push(conflict(
+                    entry.place(),
+                    &path,
+                    "an entry of the stack is exactly one of ferromagnet, normal, barrier or interface",
+                    "for example `[[stack]]` then `normal = { material = \"copper\", thickness = \"20 nm\" }`",
+                ));
+            }
             continue;
         };
         let Some(node) = entry.node(only) else { continue };
@@ -313,12 +370,19 @@ fn long_form(top: &Reader<'_>, library: &Library, faults: &Faults) -> Option<For
     }
     let (left, right) = (words[0]?, words[1]?);
     let place = top.key_place("stack").unwrap_or_else(|| top.place().clone());
-    check_order(&parts, left, right, &place, faults);
+    if !understood || faults.told("stack") {
+        return None;
+    }
+    if parts.is_empty() {
+        faults.push(conflict(&place, "stack", "the stack has no layer", "add [[stack]] entries"));
+        return None;
+    }
+    check_order(&parts, left, right, faults);
     let channel = channel_of(&parts, &place, faults)?;
     Some(Form { parts, channel, left: (left, true), right: (right, true), written: Written::Stack })
 }
 
-fn check_order(parts: &[Part], left: EndWord, right: EndWord, place: &Place, faults: &Faults) {
+fn check_order(parts: &[Part], left: EndWord, right: EndWord, faults: &Faults) {
     for pair in parts.windows(2) {
         if let [Part::Contact(_), Part::Contact(second)] = pair {
             faults.push(conflict(
@@ -338,7 +402,7 @@ fn check_order(parts: &[Part], left: EndWord, right: EndWord, place: &Place, fau
                 "a stack begins and ends with a layer",
             )),
             Some(Part::Ferromagnet(layer) | Part::Normal(layer)) => needs_thickness(layer, end, faults),
-            None => faults.push(conflict(place, "stack", "the stack has no layer", "add [[stack]] entries")),
+            None => {}
         }
     }
     for layer in parts.iter().skip(1).take(parts.len().saturating_sub(2)).filter_map(|p| match p {
@@ -373,8 +437,8 @@ fn channel_of(parts: &[Part], place: &Place, faults: &Faults) -> Option<usize> {
         .copied()
         .filter(|i| matches!(&parts[*i], Part::Normal(l) if l.is_channel))
         .collect();
-    if marked.len() > 1 {
-        faults.push(conflict(place, "stack", "more than one layer is marked as the channel", "keep one `channel = true`"));
+    if let Some(Part::Normal(second)) = marked.get(1).and_then(|i| parts.get(*i)) {
+        faults.push(conflict(&second.place, &second.path, "more than one layer is marked as the channel", "keep one `channel = true`"));
         return None;
     }
     let has_ferromagnet = parts.iter().any(|p| matches!(p, Part::Ferromagnet(_)));

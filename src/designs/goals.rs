@@ -196,7 +196,7 @@ fn read_comparison(
     } else if let Some(r) = trimmed.strip_prefix('≤') {
         (false, trimmed.len() - r.len())
     } else {
-        refuse(faults, &node.place, field, "a goal begins with a comparison", "write \">= 10 %\", \"<= 5 %\" or \"1 .. 5 %\"");
+        refuse(faults, &node.place, field, "a goal begins with >= or <=, or is an interval", "write \">= 10 %\", \"<= 5 %\" or \"1 .. 5 %\"");
         return None;
     };
     let start = offset + skip;

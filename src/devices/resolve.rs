@@ -184,6 +184,7 @@ impl Work<'_> {
                     Provenance { origin: origin_of(&record.common, decided, among), marks };
                 Some(self.add(format!("{}.{key}", spec.path), kind, reading, provenance))
             }
+            Err(NotChosen::WhichDoping(_)) if self.faults.told(&format!("{}.doping", spec.path)) => None,
             Err(NotChosen::WhichDoping(dopings)) => {
                 let list: Vec<String> =
                     dopings.iter().map(|d| with_digits(*d, Scale::Density, 2)).collect();
@@ -374,7 +375,7 @@ impl Work<'_> {
                 &spec.place,
                 &spec.path,
                 "bulk_asymmetry",
-                format!("a pair of β and λ of {}", material.id),
+                format!("pair of β and λ of {}", material.id),
                 Vec::new(),
                 "0.4 ± 0.1",
             );
@@ -494,6 +495,9 @@ impl Work<'_> {
             }
             return Some(plan);
         };
+        if let Some(name) = &spec.material {
+            self.material(name, path, &[Class::Barrier])?;
+        }
         let note = spec.note.as_ref();
         if let Some(ra) = &spec.resistance_area {
             let name = format!("{path}.resistance_area");
@@ -522,7 +526,7 @@ impl Work<'_> {
                 place,
                 path,
                 "interface_spin_resistance",
-                "a resistance of this interface".to_owned(),
+                "resistance of this interface".to_owned(),
                 Vec::new(),
                 "0.5 fΩ m²",
             );
@@ -607,7 +611,7 @@ impl Work<'_> {
             &spec.place,
             path,
             "interface_asymmetry",
-            format!("an interface asymmetry γ of {triple}, nor a tunnel polarization to borrow"),
+            format!("interface asymmetry γ of {triple}, nor a tunnel polarization to borrow"),
             exists,
             "0.3 ± 0.1",
         );

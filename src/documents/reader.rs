@@ -36,6 +36,12 @@ impl Faults {
         all
     }
 
+    /// Whether something was said about this field already, so that what follows from it is not said too.
+    #[must_use]
+    pub fn told(&self, field: &str) -> bool {
+        self.0.borrow().iter().any(|f| f.field == field)
+    }
+
     /// How many there are.
     #[must_use]
     pub fn count(&self) -> usize {
@@ -140,8 +146,11 @@ impl<'a> Reader<'a> {
         self.text(key)
     }
 
-    /// Reports a key as missing.
+    /// Reports a key as missing; not of something that is no table, which was reported as such.
     pub fn missing(&self, key: &str, help: &str) {
+        if !matches!(self.node.value, Value::Table(_)) {
+            return;
+        }
         self.faults.push(Fault {
             place: Some(self.node.place.clone()),
             field: self.path_of(key),
@@ -251,6 +260,12 @@ impl<'a> Reader<'a> {
             .enumerate()
             .map(|(i, item)| Reader::new(item, &format!("{}.{}", self.path_of(key), i + 1), &self.faults))
             .collect()
+    }
+
+    /// Whether it is a table without an entry.
+    #[must_use]
+    pub fn is_empty_table(&self) -> bool {
+        matches!(&self.node.value, Value::Table(entries) if entries.is_empty())
     }
 
     /// All entries of this table in order: key, its place, value. Counts them as read.

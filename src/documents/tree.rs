@@ -1,5 +1,6 @@
 //! A TOML text as a tree in which every key and every value knows its place.
 
+use std::collections::BTreeSet;
 use std::sync::Arc;
 
 use toml::Spanned;
@@ -96,8 +97,12 @@ impl Node {
 pub fn parse(source: &Arc<Source>) -> Result<Node, Vec<Fault>> {
     let (table, errors) = DeTable::parse_recoverable(&source.text);
     if !errors.is_empty() {
+        // The first of each line: what follows on it is mostly said of the same slip.
+        let mut lines = BTreeSet::new();
+        let line = |at: usize| source.text.as_bytes().iter().take(at).filter(|b| **b == b'\n').count();
         return Err(errors
             .into_iter()
+            .filter(|e| lines.insert(e.span().map(|span| line(span.start))))
             .map(|e| Fault {
                 place: e.span().map(|span| Place { source: Arc::clone(source), span }),
                 field: String::new(),

@@ -1,6 +1,6 @@
 //! Rules that hold over a whole set of records: what one file alone cannot show.
 
-use std::collections::BTreeMap;
+use std::collections::{BTreeMap, BTreeSet};
 
 use crate::documents::fault::{Fault, Wrong, nearest};
 use crate::documents::reader::Faults;
@@ -148,6 +148,14 @@ fn sources(commons: &[&Common], references: &References, faults: &Faults) {
 
 fn links(commons: &[&Common], library: Option<&Library>, faults: &Faults) {
     let known: BTreeMap<&str, &Common> = commons.iter().map(|c| (c.id.as_str(), *c)).collect();
+    let points_away = commons
+        .iter()
+        .flat_map(|c| c.disagrees_with.iter().chain(&c.parents))
+        .any(|id| !known.contains_key(id.as_str()));
+    let shipped = match library {
+        Some(library) if points_away => ids_of(library),
+        _ => BTreeSet::new(),
+    };
     for common in commons {
         for (field, id) in common
             .disagrees_with
@@ -168,20 +176,34 @@ fn links(commons: &[&Common], library: Option<&Library>, faults: &Faults) {
                 }
                 Some(_) => {}
                 // A folder of the user may point at shipped records, which are not among its own.
-                None if library.is_some() => {}
+                None if shipped.contains(id) => {}
                 None => faults.push(at(
                     common,
                     field,
                     Wrong::UnknownWord {
                         what: "record id",
                         found: id.clone(),
-                        nearest: nearest(id, known.keys().copied()),
+                        nearest: nearest(id, known.keys().copied().chain(shipped.iter().map(String::as_str))),
                         allowed: Vec::new(),
                     },
                 )),
             }
         }
     }
+}
+
+/// Ids of all records of a library.
+fn ids_of(library: &Library) -> BTreeSet<String> {
+    let quiet = Faults::default();
+    let mut ids = BTreeSet::new();
+    for listed in library.listed() {
+        if let Some(m) = library.material(&listed.id, &quiet) {
+            ids.extend(commons_of_material(&m).iter().map(|c| c.id.clone()));
+        } else if let Some(i) = library.interface(&listed.id, &quiet) {
+            ids.extend(commons_of_interface(&i).iter().map(|c| c.id.clone()));
+        }
+    }
+    ids
 }
 
 fn known_materials(

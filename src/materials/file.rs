@@ -5,7 +5,7 @@ use crate::documents::reader::{Faults, Reader};
 use crate::documents::tree::{Node, Value};
 use crate::quantities::kind::{self, Kind};
 use crate::quantities::spread::Spread;
-use crate::quantities::text::Reading;
+use crate::quantities::text::{Reading, read};
 use crate::quantities::unit::{Context, parse_unit};
 
 use super::property::{PROPERTIES, Property, property_named};
@@ -40,7 +40,7 @@ pub(super) fn read_file(root: &Node, from_user: bool, faults: &Faults) -> Option
             );
             return None;
         }
-    } else {
+    } else if ["material", "interface", "prior"].iter().any(|head| top.has(head)) {
         top.missing("format", "the first line of a file of records is `format = 1`");
     }
     let content = if top.has("material") {
@@ -63,12 +63,58 @@ fn read_priors(top: &Reader<'_>) -> Vec<Prior> {
         .filter_map(|r| {
             let property = r.required_text("property", "the property class, for example \"resistivity\"");
             let spread = r.required_text("spread", "for example \"×/ 1.3\" or \"± 0.1\"");
+            if let (Some(property), Some(spread)) = (&property, &spread) {
+                check_prior(r, &property.value, &spread.value);
+            }
             let note = r.text("note").map(|t| t.value);
             r.word("obtained", "way of obtaining", Obtained::WORDS);
             r.finish();
             Some(Prior { property: property?.value, spread: spread?.value, note })
         })
         .collect()
+}
+
+/// Numbers of pairs, contacts and calibrations that a prior may be of, beside the properties.
+const OTHER_PRIORS: &[(&str, &Kind)] = &[
+    ("bulk_asymmetry", &kind::BULK_ASYMMETRY),
+    ("interface_asymmetry", &kind::INTERFACE_ASYMMETRY),
+    ("polarization", &kind::SPIN_POLARIZATION),
+    ("interface_spin_resistance", &kind::INTERFACE_SPIN_RESISTANCE),
+    ("resistance_area", &kind::RESISTANCE_AREA),
+    ("spin_memory_loss", &kind::SPIN_MEMORY_LOSS),
+    ("thickness", &kind::THICKNESS),
+    ("thickness_per_decade", &kind::DECADE_THICKNESS),
+];
+
+/// A prior is of a known property, and its text can stand behind a value of it.
+fn check_prior(r: &Reader<'_>, property: &str, spread: &str) {
+    let other = OTHER_PRIORS.iter().find(|(name, _)| *name == property).map(|(_, kind)| *kind);
+    let Some(kind) = property_named(property).map(|p| p.kind).or(other) else {
+        let names = || PROPERTIES.iter().map(|p| p.name).chain(OTHER_PRIORS.iter().map(|(name, _)| *name));
+        r.fault(
+            "property",
+            Wrong::UnknownWord {
+                what: "property",
+                nearest: nearest(property, names()),
+                found: property.to_owned(),
+                allowed: names().map(str::to_owned).collect(),
+            },
+        );
+        return;
+    };
+    let example = kind.examples.iter().find(|e| !e.contains('%')).or(kind.examples.first());
+    let readable = example.is_none_or(|value| {
+        read(&format!("{value} {spread}"), kind, &Context::default())
+            .is_ok_and(|reading| !matches!(reading.spread, Spread::Exact))
+    });
+    if !readable {
+        conflict(
+            r,
+            "spread",
+            &format!("this cannot stand behind a value of {}", kind.name),
+            "write \"×/ 1.3\", or \"± …\" with the unit of the property",
+        );
+    }
 }
 
 fn read_material(top: &Reader<'_>, from_user: bool, faults: &Faults) -> Option<Material> {

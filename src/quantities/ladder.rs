@@ -105,7 +105,7 @@ const CURRENT_DENSITY: Ladder = Ladder {
 const VOLTAGE: Ladder = several(
     &[
         step("pV", -12, 0),
-        step("nV", -9, 0),
+        step("nV", -9, -9),
         step("µV", -6, -6),
         step("mV", -3, -3),
         step("V", 0, 0),

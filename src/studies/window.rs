@@ -203,6 +203,8 @@ fn follow(scaled: &Scaled<'_>) -> Result<Vec<(f64, f64)>, StackFault> {
         let ra = SMALLEST * 10.0_f64.powf(i as f64 / POINTS_A_DECADE as f64);
         grid.push((ra, scaled.value(ra)?));
     }
+    // Inputs hundreds of decades out leave no number at some products: nothing is concluded from those.
+    grid.retain(|(_, value)| value.is_finite());
     Ok(grid)
 }
 

@@ -9,6 +9,7 @@ use crate::documents::fault::{Fault, Place, Source, Wrong, nearest};
 use crate::documents::reader::Faults;
 use crate::materials::check::{Counted, check as check_files};
 use crate::materials::library::Library;
+use crate::presentation::lines::wrap;
 use crate::presentation::records;
 
 /// `list`.
@@ -73,7 +74,7 @@ pub fn check(a: &Check) -> Exit {
     if faults.count() > 0 {
         return refuse(&faults.take());
     }
-    print(&[told(&counted)], Exit::Answered)
+    print(&wrap(&told(&counted), width(None)), Exit::Answered)
 }
 
 fn told(c: &Counted) -> String {
