@@ -2,11 +2,10 @@
 
 use crate::documents::fault::{Fault, Place, Wrong};
 use crate::documents::reader::{Faults, Placed, Reader};
-use crate::documents::tree::{Node, Value};
+use crate::documents::tree::Node;
 use crate::materials::library::Library;
 use crate::quantities::kind;
 use crate::quantities::text::Reading;
-use crate::quantities::unit::Context;
 
 use super::goals::{Goal, GoalState, Target, read_goals};
 use super::layers::{
@@ -80,11 +79,11 @@ fn conflict(place: &Place, field: &str, reason: &str, help: &str) -> Fault {
 pub fn read_design(root: &Node, library: &Library, faults: &Faults) -> Option<Design> {
     let top = Reader::new(root, "", faults);
     let title = top.text("title").map(|t| t.value);
-    let temperature = top.quantity("temperature", &kind::TEMPERATURE, &Context::default());
+    let temperature = top.exact_quantity("temperature", &kind::TEMPERATURE);
     if !top.has("temperature") {
         top.missing("temperature", "for example `temperature = \"300 K\"`");
     }
-    let current_density = top.quantity("current_density", &kind::CURRENT_DENSITY, &Context::default());
+    let current_density = top.exact_quantity("current_density", &kind::CURRENT_DENSITY);
     match top.table("layout") {
         Some(layout) => {
             if !layout.has("kind") {
@@ -454,13 +453,20 @@ fn channel_of(parts: &[Part], place: &Place, faults: &Faults) -> Option<usize> {
     let first_ferromagnet = parts.iter().position(|p| matches!(p, Part::Ferromagnet(_))).unwrap_or(0);
     marked
         .first()
+        .or_else(|| normals.iter().find(|i| between_states(parts, **i)))
         .or_else(|| normals.iter().find(|i| **i > first_ferromagnet))
         .or(normals.last())
         .copied()
 }
 
-/// Whether the node is a table with something in it.
-#[must_use]
-pub fn is_empty(node: &Node) -> bool {
-    matches!(&node.value, Value::Table(entries) if entries.is_empty())
+/// Whether the layer lies between a magnet that turns and one that does not: there the two states differ.
+fn between_states(parts: &[Part], at: usize) -> bool {
+    let turns = |p: &Part| match p {
+        Part::Ferromagnet(layer) => Some(layer.magnetization == Some(MagnetizationWord::Free)),
+        _ => None,
+    };
+    let layer = |p: &&Part| !matches!(p, Part::Contact(_));
+    let left = parts[..at].iter().rev().find(layer).and_then(turns);
+    let right = parts[at + 1..].iter().find(layer).and_then(turns);
+    matches!((left, right), (Some(a), Some(b)) if a != b)
 }

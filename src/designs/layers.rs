@@ -158,7 +158,7 @@ pub fn read_layer(node: &Node, path: &str, role: Role, faults: &Faults) -> Layer
     let thickness = r.quantity("thickness", &kind::THICKNESS, &plain);
     let (mut doping, mut dopant, mut carrier_type) = (None, None, None);
     if !ferromagnet {
-        doping = r.quantity("doping", &kind::DOPING, &plain);
+        doping = r.exact_quantity("doping", &kind::DOPING);
         dopant = r.text("dopant").map(|t| t.value);
         carrier_type =
             r.word("type", "carrier type", &[("n", "n"), ("p", "p")]).map(|w| w.value.to_owned());
@@ -203,11 +203,9 @@ pub fn read_layer(node: &Node, path: &str, role: Role, faults: &Faults) -> Layer
             }
         }
     }
-    if material.is_some()
-        && ferromagnet
-        && bulk_asymmetry.is_some() != spin_diffusion_length.is_some()
-    {
-        let (given, other) = if bulk_asymmetry.is_some() {
+    let (has_beta, has_lambda) = (r.has("bulk_asymmetry"), r.has("spin_diffusion_length"));
+    if material.is_some() && ferromagnet && has_beta != has_lambda {
+        let (given, other) = if has_beta {
             ("bulk_asymmetry", "spin_diffusion_length")
         } else {
             ("spin_diffusion_length", "bulk_asymmetry")
@@ -269,7 +267,7 @@ pub fn read_contact(
     let spin_memory_loss = r.quantity("spin_memory_loss", &kind::SPIN_MEMORY_LOSS, &plain);
     let thickness = if is_barrier {
         let context = monolayer(library, material.as_ref(), faults);
-        r.quantity("thickness", &kind::THICKNESS, &context)
+        r.quantity("thickness", &kind::BARRIER_THICKNESS, &context)
     } else {
         None
     };

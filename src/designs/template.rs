@@ -7,7 +7,7 @@ pub const VERTICAL: &str = r#"# A vertical stack: the current crosses the layers
 
 title = "Iron on magnesia on n-silicon, first sketch"
 temperature = "300 K"
-# current_density = "1e4 A/cm²"            # without it the spin accumulation is told for 10⁵ A/cm²
+# current_density = "1e4 A/cm²"            # without it voltages are told per a power of ten of it
 
 [injector]
 # `injectance materials list` shows what the library knows. Without `material`, state resistivity,
@@ -21,7 +21,7 @@ material = "silicon"
 type = "n"
 dopant = "phosphorus"
 doping = "5e19 /cm³"
-thickness = "300 nm"
+thickness = "2 µm"
 end = "semi-infinite"                      # or "spin sink", "reflecting"; not needed with a [detector]
 # resistivity = "1.5 ± 0.1 mΩ cm"          # beside `material` a property overrides the library ...
 # note = "four-point measurement"          # ... and says where it comes from

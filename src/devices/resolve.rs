@@ -56,6 +56,28 @@ fn origin_of(common: &Common, decided: choose::Decided, among: usize) -> Origin 
     }
 }
 
+/// `p-type silicon`, `silicon`.
+fn typed_name(material: &Material, spec: &LayerSpec) -> String {
+    match &spec.carrier_type {
+        Some(t) => format!("{t}-type {}", material.id),
+        None => material.id.clone(),
+    }
+}
+
+/// Carrier types that the library has a property for, to be told when it has none for the one asked.
+fn existing_types(material: &Material, key: &str) -> Vec<String> {
+    let mut all: Vec<String> = material
+        .values
+        .iter()
+        .filter(|v| v.property.name == key)
+        .filter_map(|v| v.common.conditions.carrier_type.as_ref())
+        .map(|t| format!("{t}-type {}", material.id))
+        .collect();
+    all.sort();
+    all.dedup();
+    all
+}
+
 fn layer_spec(part: &Part) -> Option<&LayerSpec> {
     match part {
         Part::Ferromagnet(l) | Part::Normal(l) => Some(l),
@@ -176,6 +198,24 @@ impl Work<'_> {
     ) -> Option<Slot<Q>> {
         let wanted = self.wanted(Some(spec));
         match choose::value(material, key, &wanted) {
+            Ok(chosen) if choose::too_far_in_doping(&chosen.marks) => {
+                let near = chosen.record.common.conditions.doping.as_ref().map_or(0.0, |d| d.si);
+                self.not_in_library(
+                    &spec.place,
+                    &spec.path,
+                    key,
+                    format!(
+                        "{} of {} within a factor {:.0} of this doping (the nearest record is for {})",
+                        kind.name,
+                        typed_name(material, spec),
+                        choose::DOPING_LIMIT,
+                        with_digits(near, Scale::Density, 2)
+                    ),
+                    Vec::new(),
+                    example,
+                );
+                None
+            }
             Ok(chosen) => {
                 let Chosen { record, decided, among, mut marks } = chosen;
                 let (reading, mark) = with_prior(self.library, key, kind, &record.reading);
@@ -208,8 +248,8 @@ impl Work<'_> {
                     &spec.place,
                     &spec.path,
                     key,
-                    format!("{} of {}", kind.name, material.id),
-                    Vec::new(),
+                    format!("{} of {}", kind.name, typed_name(material, spec)),
+                    existing_types(material, key),
                     example,
                 );
                 None
@@ -274,6 +314,19 @@ impl Work<'_> {
             Some(name) => Some(self.material(name, &spec.path, &[Class::Semiconductor, Class::Metal])?),
             None => None,
         };
+        if let Some(m) = &material
+            && m.class == Class::Metal
+            && (spec.doping.is_some() || spec.dopant.is_some() || spec.carrier_type.is_some())
+        {
+            self.fault(
+                spec.doping.as_ref().map_or(&spec.place, |d| &d.place),
+                format!("{}.doping", spec.path),
+                Wrong::Conflict {
+                    reason: format!("{} is a metal: it takes no doping, dopant or type", m.id),
+                    help: Some("drop these keys".to_owned()),
+                },
+            );
+        }
         let resistivity = match (self.given_resistivity(spec), &material) {
             (Some(plan), _) => Some(plan),
             (None, Some(m)) => self

@@ -4,6 +4,7 @@ use std::cell::RefCell;
 use std::rc::Rc;
 
 use crate::quantities::kind::Kind;
+use crate::quantities::spread::Spread;
 use crate::quantities::text::{Reading, read, read_bare};
 use crate::quantities::unit::Context;
 
@@ -209,6 +210,23 @@ impl<'a> Reader<'a> {
                 None
             }
         }
+    }
+
+    /// A quantity that takes no spread: it decides which records are chosen, or only scales an answer.
+    pub fn exact_quantity(&self, key: &'static str, kind: &'static Kind) -> Option<Placed<Reading>> {
+        let placed = self.quantity(key, kind, &Context::default())?;
+        if placed.value.spread == Spread::Exact {
+            return Some(placed);
+        }
+        self.faults.push(Fault {
+            place: Some(placed.place),
+            field: self.path_of(key),
+            wrong: Wrong::Conflict {
+                reason: format!("`{key}` takes no spread and no bound"),
+                help: Some(format!("write a plain value, for example \"{}\"", kind.examples.first().copied().unwrap_or("1"))),
+            },
+        });
+        None
     }
 
     /// true or false.

@@ -1,6 +1,6 @@
 //! Choosing a record. The rule that decided, and every mark the choice carries, are part of the answer.
 //!
-//! Order in which records are ranked: doping within a factor 1.5 of the design's (else the nearest);
+//! Order in which records are ranked: doping within a factor 2 of the design's (else the nearest);
 //! temperature within ±10 % (else the nearest, marked); a record of the user before a shipped one; a
 //! record with a value before one that is only a bound; same dopant; status; how it was obtained; the
 //! remaining distances; the order in the file. Superseded records are never chosen. Nothing is averaged.
@@ -21,7 +21,9 @@ use super::record::{
 /// Fraction by which a record's temperature may differ from the design's without a mark.
 pub const TEMPERATURE_REACH: f64 = 0.10;
 /// Factor by which a record's doping may differ from the design's without a mark.
-pub const DOPING_REACH: f64 = 1.5;
+pub const DOPING_REACH: f64 = 2.0;
+/// Factor beyond which a record of another doping is no answer at all.
+pub const DOPING_LIMIT: f64 = 10.0;
 
 /// What decided between the record taken and the next best.
 #[derive(Clone, Copy, PartialEq, Eq, Debug)]
@@ -66,7 +68,7 @@ pub enum Mark {
     },
     /// The record's temperature is not stated beside the value.
     TemperatureNotStated,
-    /// The record's doping differs by more than a factor 1.5.
+    /// The record's doping differs by more than a factor 2.
     OtherDoping {
         /// Doping of the record, m⁻³.
         record: f64,
@@ -286,6 +288,15 @@ pub fn with_prior(
         Some((r, prior)) => (r, Some(Mark::PriorSpread { prior })),
         None => (reading.clone(), Some(Mark::NoSpread)),
     }
+}
+
+/// Whether a choice is of a doping so far away that it is no answer.
+#[must_use]
+pub fn too_far_in_doping(marks: &[Mark]) -> bool {
+    marks.iter().any(|m| {
+        matches!(m, Mark::OtherDoping { record, wanted }
+            if (record / wanted).ln().abs() > DOPING_LIMIT.ln() * (1.0 + 1e-12))
+    })
 }
 
 fn is_bound(reading: &Reading) -> bool {

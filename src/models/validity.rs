@@ -15,6 +15,16 @@ use super::ladder::Layer;
 /// still differs from the thick limit by sech 3 = 10 % of itself, in the worst end.
 pub const THICK_FERROMAGNET: f64 = 3.0;
 
+/// Voltage over a tunnel interface above which its asymmetry falls and its resistance is no longer that of
+/// small bias, V. Common practice: tunnel magnetoresistance has lost about half by then.
+pub const SMALL_BIAS: f64 = 0.5;
+
+/// 1 − |β| or 1 − |γ| below which 1/(1 − β²) leaves the range that measurements support.
+pub const NEAR_ONE: f64 = 0.01;
+
+/// Fraction of the Curie temperature above which a ferromagnet's asymmetries fall steeply. Common practice.
+pub const NEAR_CURIE: f64 = 0.7;
+
 /// A caveat of the ladder.
 #[derive(Clone, Copy, PartialEq, Debug)]
 pub enum Caveat {

@@ -6,6 +6,7 @@ use comfy_table::{CellAlignment, ColumnConstraint, ContentArrangement, Table, pr
 use crate::devices::inputs::Input;
 use crate::devices::provenance::Origin;
 use crate::devices::vertical::{EndPlan, Position};
+use crate::materials::choose::Mark;
 use crate::models::ladder::{Element, End, Face, Layer, Magnetization};
 use crate::quantities::dimensions::Measured;
 use crate::quantities::kind::Scale;
@@ -16,7 +17,7 @@ use crate::studies::assess::Assessment;
 use super::lines::{labelled, marked, wrap};
 use super::numbers::{area, factor, percent, voltage};
 use super::summary::{self, position_name, share};
-use super::wording::{decided, finding, mark, severity_mark};
+use super::wording::{decided, finding, mark, severity_mark, target_name};
 
 /// A table of the house: no vertical rules, a line under the head.
 #[must_use]
@@ -103,14 +104,22 @@ fn source_of(a: &Assessment, input: &Input) -> String {
             (true, None) => "design, in place of the library".to_owned(),
             (false, _) => "design".to_owned(),
         },
-        Origin::Record { id, source, decided: d, among, .. } => {
+        Origin::Record { id, source, decided: d, among, obtained } => {
             let footnote = source
                 .as_ref()
                 .and_then(|key| a.references.iter().position(|(k, _)| k == key))
                 .map_or(String::new(), |n| format!(" [{}]", n + 1));
-            let marks: Vec<String> = input.provenance.marks.iter().map(mark).collect();
+            // How it was obtained stands first; the marks that repeat it are left out.
+            let marks: Vec<String> = input
+                .provenance
+                .marks
+                .iter()
+                .filter(|m| !matches!(m, Mark::Recalled | Mark::Derived | Mark::Estimated | Mark::CommonPractice))
+                .map(mark)
+                .collect();
             let marks = if marks.is_empty() { String::new() } else { format!("; {}", marks.join("; ")) };
-            format!("{id}{footnote} ({}){marks}", decided(*d, *among))
+            let unread = if *obtained == "recalled" { ", not read" } else { "" };
+            format!("{id}{footnote}, {obtained}{unread} ({}){marks}", decided(*d, *among))
         }
     }
 }
@@ -154,7 +163,13 @@ fn inputs(a: &Assessment, width: usize) -> Vec<String> {
             lines.extend(marked("     ", &source, width));
         }
     }
-    lines.extend(wrap("Share: part of Σ(change)² of the first answer when each input moves by one standard deviation, one at a time; – where an input has no spread to move.", width));
+    lines.extend(wrap(
+        &format!(
+            "Share: part of Σ(change)² of the {} when each input moves by one standard deviation, one at a time; – where an input has no spread to move.",
+            target_name(a.wish.target)
+        ),
+        width,
+    ));
     lines
 }
 
@@ -164,7 +179,7 @@ fn layer_row(a: &Assessment, at: Position, layer: &Layer, place: &str) -> Vec<St
     let turns = match (a.device.is_ferromagnet(at), layer.magnetization) {
         (false, _) => "–",
         (true, Magnetization::Fixed) => "fixed",
-        (true, Magnetization::FixedOpposite) => "opposite",
+        (true, Magnetization::FixedOpposite) => "fixed, AP",
         (true, Magnetization::Free) => "free",
     };
     vec![
@@ -224,9 +239,11 @@ fn stack(a: &Assessment, width: usize) -> Vec<String> {
                     "–".to_owned(),
                     if none { "–".to_owned() } else { format!("{:.3}", x.asymmetry.si()) },
                     if none { "–".to_owned() } else { whole(&with_digits(x.spin_resistance.si(), Scale::ResistanceArea, 3)) },
-                    match x.magnetization {
-                        Magnetization::Free => "free".to_owned(),
-                        _ => "–".to_owned(),
+                    match (none, x.magnetization) {
+                        (true, _) => "–".to_owned(),
+                        (_, Magnetization::Free) => "free".to_owned(),
+                        (_, Magnetization::Fixed) => "fixed".to_owned(),
+                        (_, Magnetization::FixedOpposite) => "fixed, AP".to_owned(),
                     },
                 ]);
             }
@@ -277,7 +294,8 @@ fn resistances(a: &Assessment, width: usize) -> Vec<String> {
         if m.channel.si().is_finite() { area(m.channel.si()) } else { "closed".to_owned() }
     ));
     if m.from_far_side.abs() > 0.0 {
-        row("from the far contact", format!("{} of the injected polarization", percent(m.from_far_side)));
+        row("injected from this contact", percent(m.crossing));
+        row("added by the far contact", percent(m.from_far_side));
     }
     lines
 }
@@ -353,8 +371,15 @@ fn checks(a: &Assessment, width: usize) -> Vec<String> {
             .map_or(String::new(), |n| format!(" [{}]", n + 1));
         let at = c.temperature.map_or(String::new(), |t| format!(" at {t} K"));
         let recalled = if c.recalled { ", recalled, not read" } else { "" };
-        let value = with_spread(c.reading.si, &c.reading.spread, Scale::Percent);
-        lines.extend(labelled(&format!("{} polarization", c.kind), &format!("{value}{at}, {}{footnote}{recalled}", c.record), width));
+        let (scale, what) = if c.is_resistance_area {
+            (Scale::ResistanceArea, "RA")
+        } else {
+            (Scale::Percent, "polarization")
+        };
+        let value = with_spread(c.reading.si, &c.reading.spread, scale);
+        let label =
+            if c.is_resistance_area { "measured RA".to_owned() } else { format!("{} {what}", c.kind.word()) };
+        lines.extend(labelled(&label, &format!("{value}{at}, {}{footnote}{recalled}", c.record), width));
     }
     lines
 }

@@ -147,19 +147,18 @@ pub fn assessment(a: &Assessment) -> Value {
         "default_window",
         a.default_window.as_ref().map_or(Value::Null, |w| window(a, w, &from)),
     );
-    put("without_barrier", a.default_half_metal.map_or(Value::Null, half_metal));
+    put("without_barrier", a.default_half_metal.map_or(Value::Null, |h| half_metal(h, &from)));
     put(
         "contact_windows",
         a.contact_windows
             .iter()
             .map(|(i, w)| {
-                let path = a.device.name(Position::Element(*i)).map(|x| x.path.clone());
-                json!({ "contact": path, "window": window(a, w, &from) })
+                json!({ "contact": path_of(a, Position::Element(*i)), "window": window(a, w, &from) })
             })
             .collect(),
     );
     put("mismatch", mismatch(a, &from, strained));
-    put("stack", Value::Array(stack(a, &from)));
+    put("stack", Value::Array(stack(a)));
     put("faces", faces(a, &from, strained));
     put("inputs", Value::Array(inputs(a)));
     put("honesty", honesty(a));
@@ -181,9 +180,11 @@ pub fn assessment(a: &Assessment) -> Value {
         a.checks
             .iter()
             .map(|c| {
+                let (key, unit) =
+                    if c.is_resistance_area { ("resistance_area", AREA) } else { ("polarization", "1") };
                 json!({
-                    "kind": c.kind,
-                    "polarization": number(c.reading.si, "1", std::slice::from_ref(&c.record), false),
+                    "kind": c.kind.word(),
+                    key: number(c.reading.si, unit, std::slice::from_ref(&c.record), false),
                     "temperature": c.temperature.map(|t| number(t, "K", &[], false)),
                     "recalled": c.recalled,
                 })
@@ -208,6 +209,33 @@ fn records(a: &Assessment) -> Vec<String> {
     ids
 }
 
+fn path_of(a: &Assessment, at: Position) -> Option<String> {
+    a.device.name(at).map(|n| n.path.clone())
+}
+
+/// Ids of the records behind the inputs of one layer or contact.
+fn under(a: &Assessment, at: Position) -> Vec<String> {
+    let Some(path) = path_of(a, at) else { return Vec::new() };
+    let mut ids: Vec<String> = a
+        .device
+        .table
+        .inputs()
+        .iter()
+        .filter(|i| i.name.rsplit_once('.').is_some_and(|(p, _)| p == path))
+        .flat_map(|i| i.provenance.records())
+        .collect();
+    ids.sort();
+    ids.dedup();
+    ids
+}
+
+fn gamma_records(a: &Assessment, w: &Window) -> Vec<String> {
+    match (&a.device.likely, w.asymmetry_is_likely) {
+        (Some(likely), true) => likely.input.provenance.records(),
+        _ => under(a, Position::Element(w.contact)),
+    }
+}
+
 fn goal(a: &Assessment, g: &GoalResult, from: &[String], strained: bool) -> Value {
     let unit = si_unit(g.goal.target.kind().scale);
     json!({
@@ -217,15 +245,15 @@ fn goal(a: &Assessment, g: &GoalResult, from: &[String], strained: bool) -> Valu
         "value": number(g.value, unit, from, strained),
         "met": g.met,
         "window": window(a, &g.window, from),
-        "without_barrier": half_metal(g.half_metal),
+        "without_barrier": half_metal(g.half_metal, from),
     })
 }
 
-fn half_metal(h: HalfMetal) -> Value {
+fn half_metal(h: HalfMetal, from: &[String]) -> Value {
     match h {
         HalfMetal::Needed { short_of_one } => json!({
             "answer": "needed",
-            "one_minus_bulk_asymmetry": number(short_of_one, "1", &[], false),
+            "one_minus_bulk_asymmetry": number(short_of_one, "1", from, false),
         }),
         HalfMetal::Suffices => json!({ "answer": "suffices as it is" }),
         HalfMetal::OutOfReach => json!({ "answer": "out of reach" }),
@@ -239,8 +267,8 @@ fn window(a: &Assessment, w: &Result<Window, NoWindow>, from: &[String]) -> Valu
             let unit = si_unit(w.wish.target.kind().scale);
             json!({
                 "status": "ok",
-                "contact": a.device.name(Position::Element(w.contact)).map(|n| n.path.clone()),
-                "contacts_scaled_together": w.together,
+                "contact": path_of(a, Position::Element(w.contact)),
+                "contacts_scaled_together": w.contacts.iter().map(|i| path_of(a, Position::Element(*i))).collect::<Vec<_>>(),
                 "intervals": w.intervals.iter().map(|i| json!({
                     "low": edge(i.low.map(Measured::si)),
                     "high": edge(i.high.map(Measured::si)),
@@ -250,9 +278,9 @@ fn window(a: &Assessment, w: &Result<Window, NoWindow>, from: &[String]) -> Valu
                     "value": number(w.best.value, unit, from, false),
                     "at": edge(w.best.at.map(Measured::si)),
                 },
-                "here": number(w.here.si(), AREA, from, false),
+                "here": number(w.here.si(), AREA, &under(a, Position::Element(w.contact)), false),
                 "inside": w.intervals.iter().any(|i| i.holds(w.here)),
-                "interface_asymmetry": number(w.asymmetry.si(), "1", &[], false),
+                "interface_asymmetry": number(w.asymmetry.si(), "1", &gamma_records(a, w), false),
                 "interface_asymmetry_of_a_barrier_not_there": w.asymmetry_is_likely,
             })
         }
@@ -271,16 +299,21 @@ fn window(a: &Assessment, w: &Result<Window, NoWindow>, from: &[String]) -> Valu
 fn mismatch(a: &Assessment, from: &[String], strained: bool) -> Value {
     let Some(m) = &a.mismatch else { return Value::Null };
     let n = |v: f64, unit: &'static str| number(v, unit, from, strained);
+    let of = |v: f64, unit: &'static str, at: Option<Position>| {
+        number(v, unit, &at.map_or(Vec::new(), |at| under(a, at)), strained)
+    };
+    let contact = a.device.injector_contact.map(Position::Element);
     json!({
         "contact_spin_impedance": n(m.contact.si(), AREA),
         "channel_spin_impedance": n(m.channel.si(), AREA),
         "offered_polarization": n(m.offered, "1"),
-        "from_far_contact": n(m.from_far_side, "1"),
-        "spin_resistance_of_channel": n(m.r_channel.si(), AREA),
-        "spin_resistance_of_ferromagnet": n(m.r_ferromagnet.si(), AREA),
-        "interface_spin_resistance": n(m.r_interface.si(), AREA),
-        "interface_asymmetry": n(m.asymmetry.si(), "1"),
-        "interface_resistance_area": n(m.resistance_area.si(), AREA),
+        "injected_from_this_contact": n(m.crossing, "1"),
+        "added_by_far_contact": n(m.from_far_side, "1"),
+        "spin_resistance_of_channel": of(m.r_channel.si(), AREA, Some(a.device.channel)),
+        "spin_resistance_of_ferromagnet": of(m.r_ferromagnet.si(), AREA, Some(a.device.injector)),
+        "interface_spin_resistance": of(m.r_interface.si(), AREA, contact),
+        "interface_asymmetry": of(m.asymmetry.si(), "1", contact),
+        "interface_resistance_area": of(m.resistance_area.si(), AREA, contact),
         "interface_resistance_area_as_measured": n(m.measured.si(), AREA),
         "channel_thickness_over_spin_diffusion_length": m.reduced_length.map(|t| n(t, "1")),
         "dwell_time_over_spin_lifetime": m.dwell.map(|t| n(t, "1")),
@@ -295,13 +328,14 @@ fn turns(m: Magnetization) -> &'static str {
     }
 }
 
-fn stack(a: &Assessment, from: &[String]) -> Vec<Value> {
-    let n = |v: f64, unit: &'static str| number(v, unit, from, false);
+fn stack(a: &Assessment) -> Vec<Value> {
     let layer = |at: Position, l: &Layer, end: bool| {
+        let from = under(a, at);
+        let n = |v: f64, unit: &'static str| number(v, unit, &from, false);
         json!({
             "element": "layer",
             "name": a.device.name(at).map(|x| x.label.clone()),
-            "path": a.device.name(at).map(|x| x.path.clone()),
+            "path": path_of(a, at),
             "semi_infinite_end": end,
             "resistivity": n(l.resistivity.si(), "Ω m"),
             "spin_diffusion_length": n(l.length.si(), "m"),
@@ -328,16 +362,20 @@ fn stack(a: &Assessment, from: &[String]) -> Vec<Value> {
         let at = Position::Element(i);
         all.push(match element {
             Element::Layer(l) => layer(at, l, false),
-            Element::Interface(x) => json!({
+            Element::Interface(x) => {
+                let from = under(a, at);
+                let n = |v: f64, unit: &'static str| number(v, unit, &from, false);
+                json!({
                 "element": "interface",
                 "name": a.device.name(at).map(|x| x.label.clone()),
-                "path": a.device.name(at).map(|x| x.path.clone()),
+                "path": path_of(a, at),
                 "interface_spin_resistance": n(x.spin_resistance.si(), AREA),
                 "resistance_area": n(x.spin_resistance.resistance_area(x.asymmetry).si(), AREA),
                 "interface_asymmetry": n(x.asymmetry.si(), "1"),
                 "spin_memory_loss": n(x.memory_loss.si(), "1"),
                 "magnetization": turns(x.magnetization),
-            }),
+                })
+            }
         });
     }
     all.push(match &a.blueprint.right {
@@ -456,6 +494,9 @@ pub fn varied(v: &Varied) -> Value {
             out.insert("value".to_owned(), json!(number(row.value, unit, &[], false)));
             for c in &units {
                 out.insert(c.name.to_owned(), json!(number(row.outcome[c.index], si_unit(c.scale), &[], false)));
+            }
+            if !v.goals.is_empty() {
+                out.insert("goals_met".to_owned(), json!(row.goals_met));
             }
             Value::Object(out)
         })

@@ -12,7 +12,7 @@ use crate::studies::window::{NoWindow, Window};
 
 use super::lines::{labelled, marked, wrap};
 use super::numbers::{
-    area, comparison, factor, near_one, of_target, percent, result, temperature, tidy,
+    area, areas, asymmetry, comparison, factor, near_one, of_target, percent, result, temperature, tidy,
     voltage, window,
 };
 use super::wording::{finding, percent_share, position, severity_mark};
@@ -104,24 +104,38 @@ pub fn why(a: &Assessment, m: &Mismatch) -> String {
         && dwell > 1.0
     {
         return format!(
-            "an electron stays {} spin lifetimes between the contacts (r_b*\u{a0}t/2r_N\u{a0}λ): it forgets",
+            "an electron stays {} spin lifetimes between the contacts, (r_1\u{a0}∥\u{a0}r_2)\u{a0}t/r_N\u{a0}λ: it forgets",
             factor(dwell)
         );
     }
     let (contact, channel) = (m.contact.si(), m.channel.si());
-    let crossing = format!("of the {} that the contact offers {} crosses", percent(m.offered), percent(a.outcome.polarization.si()));
+    // The two contacts together make the injected polarization; a far share of almost nothing is not told.
+    let p = a.outcome.polarization.si();
+    let far = m.from_far_side.abs() > 5e-3 * p.abs();
+    let adds = if far { format!("; the far contact adds {}", percent(m.from_far_side)) } else { String::new() };
+    let crossing = format!(
+        "of the {} that the contact offers {} crosses{adds}",
+        percent(m.offered),
+        percent(m.crossing)
+    );
     if !channel.is_finite() {
         return format!("the channel is closed for spins: {crossing}");
     }
+    let both = areas(&[channel, contact]);
+    let (channel_text, contact_text) = (area(channel), area(contact));
+    let (channel_text, contact_text) = match both.as_slice() {
+        [n, c] if (channel / contact).max(contact / channel) < 100.0 => (n.clone(), c.clone()),
+        _ => (channel_text, contact_text),
+    };
     if channel > contact {
         format!(
-            "the channel's spin impedance, {}, is {} times the contact's, {}: {crossing}",
-            area(channel), factor(channel / contact), area(contact)
+            "the channel's spin impedance, {channel_text}, is {} times the contact's, {contact_text}: {crossing}",
+            factor(channel / contact)
         )
     } else {
         format!(
-            "the contact's spin impedance, {}, is {} times the channel's, {}: {crossing}",
-            area(contact), factor(contact / channel), area(channel)
+            "the contact's spin impedance, {contact_text}, is {} times the channel's, {channel_text}: {crossing}",
+            factor(contact / channel)
         )
     }
 }
@@ -136,10 +150,39 @@ fn asymmetry_text(a: &Assessment, w: &Window) -> String {
             });
             format!(", {} {}", if borrowed { "borrowed from" } else { "that of" }, l.interface)
         });
-        format!("with γ\u{a0}=\u{a0}{gamma:.2}{from}")
+        format!("with γ\u{a0}=\u{a0}{}{from}", asymmetry(gamma))
     } else {
-        format!("with γ\u{a0}=\u{a0}{gamma:.2}")
+        format!("with γ\u{a0}=\u{a0}{}", asymmetry(gamma))
     }
+}
+
+/// Which contacts are scaled, where there are several, and whether they are alike.
+fn together(a: &Assessment, w: &Window) -> String {
+    if w.contacts.len() < 2 {
+        return String::new();
+    }
+    let product = |i: &usize| {
+        a.blueprint.interface(*i).map_or(0.0, |x| x.spin_resistance.resistance_area(x.asymmetry).si())
+    };
+    let products: Vec<f64> = w.contacts.iter().map(product).collect();
+    let (low, high) = (
+        products.iter().copied().fold(f64::INFINITY, f64::min),
+        products.iter().copied().fold(0.0, f64::max),
+    );
+    let named = if a.written == Written::Stack {
+        let names: Vec<String> = w
+            .contacts
+            .iter()
+            .filter_map(|i| a.device.name(Position::Element(*i)))
+            .map(|n| n.path.clone())
+            .collect();
+        format!(", {}", names.join(" and "))
+    } else {
+        String::new()
+    };
+    let unlike = low > 0.0 && high / low > 1.01;
+    let ratio = if unlike { format!(", their ratio {} kept", factor(high / low)) } else { String::new() };
+    format!("; both contacts{named} scaled together{ratio}")
 }
 
 /// The window and where the design stands.
@@ -147,7 +190,7 @@ fn asymmetry_text(a: &Assessment, w: &Window) -> String {
 pub fn window_text(a: &Assessment, found: &Result<Window, NoWindow>) -> String {
     match found {
         Ok(w) => {
-            let together = if w.together > 1 { "; both contacts scaled together" } else { "" };
+            let together = together(a, w);
             let stands = if w.here.si() > 0.0 {
                 format!("this design: {}{}", area(w.here.si()), position(w))
             } else {
@@ -181,7 +224,9 @@ pub fn rule_of_thumb(a: &Assessment, gamma: f64) -> Option<String> {
         return None;
     }
     let ra = (1.0 - gamma * gamma) * m.r_channel.si();
-    Some(format!("{} .. {} from (1−γ²)\u{a0}r_N\u{a0}t/λ .. (1−γ²)\u{a0}r_N\u{a0}λ/t", area(ra * t), area(ra / t)))
+    let [low, high] = [ra * t, ra / t];
+    let both = areas(&[low, high]).join(" .. ");
+    Some(format!("{both} from (1−γ²)\u{a0}r_N\u{a0}t/λ .. (1−γ²)\u{a0}r_N\u{a0}λ/t"))
 }
 
 /// What bulk polarization would be needed without a barrier.
@@ -229,7 +274,7 @@ pub fn honesty(a: &Assessment) -> String {
         (0, _) => "no input has a spread to move".to_owned(),
         (1, 0) => "one carries most of the result and is neither recalled nor assumed".to_owned(),
         (1, _) => "one of the recalled or assumed carries most of the result".to_owned(),
-        (n, 0) => format!("{n} carry most of the result, none of them recalled or assumed"),
+        (n, 0) => format!("{n} carry most of its spread, none of them recalled or assumed"),
         (n, d) if d == n => format!("{n} carry most of the result, all of them recalled or assumed"),
         (n, d) => format!("{n} carry most of the result, {d} of them recalled or assumed"),
     };
@@ -277,12 +322,13 @@ pub fn summary_rows(a: &Assessment, width: usize) -> Vec<String> {
             "magnetoresistance",
             with_goal(a, Target::Magnetoresistance, percent(a.outcome.magnetoresistance.si())),
         );
-        let change = format!(
-            "{} on RA {} (antiparallel {})",
-            area(a.outcome.resistance_area_change.si()),
-            area(a.resistance_area[0].si()),
-            area(a.resistance_area[1].si())
-        );
+        let all = [
+            a.outcome.resistance_area_change.si(),
+            a.resistance_area[0].si(),
+            a.resistance_area[1].si(),
+        ];
+        let printed = areas(&all);
+        let change = format!("{} on RA {} (antiparallel {})", printed[0], printed[1], printed[2]);
         row("resistance-area change", with_goal(a, Target::ResistanceAreaChange, change));
     }
     if let Some(m) = &a.mismatch {
@@ -347,25 +393,19 @@ fn findings_within(a: &Assessment, width: usize, room: usize) -> Vec<String> {
         .iter()
         .map(|f| marked(severity_mark(f.severity()), &finding(f), width))
         .collect();
-    let all: usize = blocks.iter().map(Vec::len).sum();
-    if all <= room {
-        return blocks.into_iter().flatten().collect();
-    }
-    let mut lines = Vec::new();
-    let mut shown = 0;
-    for block in &blocks {
-        if lines.len() + block.len() + 1 > room {
-            break;
+    // What does not fit is named, so that no caveat is hidden by the width of a terminal.
+    for shown in (0..=blocks.len()).rev() {
+        let mut lines: Vec<String> = blocks[..shown].iter().flatten().cloned().collect();
+        if shown < blocks.len() {
+            let names: Vec<&str> = untold[shown..].iter().map(|f| f.rule_name()).collect();
+            let text = format!("{} more in --full: {}", names.len(), names.join(", "));
+            lines.extend(marked(" !", &text, width));
         }
-        lines.extend(block.iter().cloned());
-        shown += 1;
+        if lines.len() <= room || shown == 0 {
+            return lines;
+        }
     }
-    if room > 0 {
-        let left = untold.len() - shown;
-        let noun = if left == 1 { "finding" } else { "findings" };
-        lines.push(format!(" ! {left} more {noun}: see --full"));
-    }
-    lines
+    Vec::new()
 }
 
 /// How the design was written, in words.

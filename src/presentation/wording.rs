@@ -1,12 +1,15 @@
 //! The sentences: findings, marks, choices. Every number comes from the result; nothing is computed here.
 
+use crate::designs::goals::Target;
 use crate::materials::choose::{Decided, Mark};
 use crate::quantities::dimensions::Measured;
 use crate::quantities::kind::Scale;
 use crate::quantities::print::with_digits;
 use crate::studies::findings::{Finding, Severity};
 
-use super::numbers::{area, factor, of_target, percent, result, temperature, voltage, window};
+use super::numbers::{
+    area, asymmetry, factor, of_target, percent, result, temperature, times, voltage, window,
+};
 
 
 /// The mark in front of a finding.
@@ -38,18 +41,25 @@ pub fn rule_text(name: &str) -> &'static str {
         "outside-window" => "the design's resistance-area product lies outside the window",
         "window-unknown" => "no window can be told because γ of a barrier is not known for this pair",
         "bare-semiconductor" => "a ferromagnet lies directly on a semiconductor: a depletion region forms, which the ohmic model leaves out",
+        "above-curie-temperature" => "a ferromagnet is used above its Curie temperature",
+        "near-curie-temperature" => "a ferromagnet is used above 0.7 of its Curie temperature, where asymmetries fall steeply (common practice)",
+        "only-a-bound" => "an input is known only as a bound; the bound itself is used",
+        "high-bias" => "more than half a volt drops over an interface: the asymmetry of small bias no longer holds (common practice)",
+        "thin-channel" => "a channel taken as semi-infinite is thinner than three spin diffusion lengths",
+        "other-dopant" => "records of another dopant are used, or the dopant is not known to the library",
+        "measured-otherwise" => "a published value of the same contact differs from the design or its answer by more than ten times",
         "borrowed-asymmetry" => "γ stands in from the tunnel polarization of the same ferromagnet and barrier on another electrode",
         "long-channel" => "the channel between two contacts is longer than its spin diffusion length",
         "thin-ferromagnet" => "a ferromagnet taken as thick is thinner than three spin diffusion lengths and its outer end is not stated",
         "thin-barrier" => "a barrier is thinner than two monolayers: pinholes are likely",
         "temperature-outside-data" => "records of a temperature more than 10 % away are used",
-        "doping-outside-data" => "records of a doping more than a factor 1.5 away are used",
+        "doping-outside-data" => "records of a doping more than a factor 2 away are used",
         "memory-loss-outside-temperature" => "a spin-memory loss measured at another temperature is used",
-        "asymmetry-near-one" => "β is within its own uncertainty of ±1, where 1/(1 − β²) diverges",
+        "asymmetry-near-one" => "β or γ is within its own uncertainty of ±1 or nearer to it than 0.01, where 1/(1 − β²) diverges",
         "uncertain-inputs-matter" => "recalled or assumed inputs carry a tenth or more of the answer's spread",
         "interface-left-out" => "a direct contact between metals has no record of an interface resistance and is taken without one",
-        "not-linear" => "the spin accumulation exceeds kT/e: the linear model strains in a non-degenerate channel",
-        "drift" => "the electric field times λ exceeds kT/e: drift changes the spin diffusion length of a non-degenerate channel",
+        "not-linear" => "the spin accumulation of a channel that is not metallic exceeds kT/e: the linear model strains",
+        "drift" => "the electric field times λ exceeds kT/e in a channel that is not metallic: drift changes its spin diffusion length",
         "strip-resistance-left-out" => "an end is fed in its plane: the strip's own series resistance is not counted",
         "record-replaced" => "records of your own folder have taken the place of shipped ones",
         _ => "",
@@ -64,10 +74,17 @@ pub fn finding(f: &Finding) -> String {
             "Conductivity mismatch: the channel's spin impedance is {} times the contact's, so of the {} that the contact offers {} crosses. A tunnel resistance has to make up the difference.",
             factor(*ratio), percent(*offered), percent(*injected)
         ),
-        Finding::GoalOutOfReach { target, best, at } => format!(
-            "No RA meets the goal: the best is {}{}. A larger γ or another quantity has to change.",
+        Finding::GoalOutOfReach { target, best, at, alone } => format!(
+            "{} meets the goal for the {}: the best is {}{}. {}",
+            if *alone { "No common scaling of the contacts" } else { "No RA" },
+            target_name(*target),
             of_target(*target, *best),
-            at.map_or(" in the limit of an infinite RA".to_owned(), |ra| format!(" at {}", area(ra.si())))
+            at.map_or(" in the limit of an infinite RA".to_owned(), |ra| format!(" at {}", area(ra.si()))),
+            if *alone {
+                "One contact changed alone would: see its own window in --full."
+            } else {
+                "A larger γ or another quantity has to change."
+            }
         ),
         Finding::OutsideWindow { window: w } => {
             let nearest: Vec<String> = w.intervals.iter().map(|i| window(i.low, i.high)).collect();
@@ -82,15 +99,46 @@ pub fn finding(f: &Finding) -> String {
             "{ferromagnet} bare on {channel}: a depletion region forms there. The ohmic answer is a hypothetical limit, not what a grown contact does."
         ),
         Finding::BorrowedAsymmetry { names, record, polarization, asymmetry } => format!(
-            "γ = {asymmetry:.2} of {} is borrowed: the tunnel polarization {polarization:.2} of {record} is an upper guide; a quarter of it to all of it is taken (our estimate).",
-            names.iter().map(|n| n.trim_end_matches(".interface_asymmetry")).collect::<Vec<_>>().join(", ")
+            "γ = {} of {} is borrowed: the tunnel polarization {} of {record} is an upper guide; a quarter of it to all of it is taken (our estimate).",
+            super::numbers::asymmetry(*asymmetry),
+            names.iter().map(|n| n.trim_end_matches(".interface_asymmetry")).collect::<Vec<_>>().join(", "),
+            super::numbers::asymmetry(*polarization)
+        ),
+        Finding::CurieTemperature { material, curie, temperature: t, record } => format!(
+            "{material} is used at {}, {} its Curie temperature of {} ({record}): {}",
+            temperature(*t),
+            if t > curie { "above" } else { "near" },
+            temperature(*curie),
+            if t > curie { "it has no spin polarization there." } else { "its asymmetries fall steeply there (common practice)." }
+        ),
+        Finding::OnlyABound { inputs } => format!(
+            "Only a bound is known, and used as the value, for {}.",
+            grouped(inputs.iter().map(String::as_str))
+        ),
+        Finding::HighBias { path, voltage: v, thickness } => format!(
+            "{} drops over {path}{}: above half a volt γ falls and the resistance is no longer that of small bias (common practice).",
+            voltage(v.si()),
+            thickness.map_or(String::new(), |t| format!(", {} thick", result(t.si(), Scale::Length)))
+        ),
+        Finding::OtherDopant { inputs, wanted } => {
+            let list: Vec<String> =
+                inputs.iter().map(|(n, d)| format!("{n} (record for {d})")).collect();
+            format!("Records of another dopant than {wanted}: {}.", list.join(", "))
+        }
+        Finding::MeasuredOtherwise { record, what, published, here } => {
+            let print = |x: f64| if *what == "polarization" { percent(x) } else { area(x) };
+            format!("A published {what} of this contact is {} ({record}), here {}.", print(*published), print(*here))
+        }
+        Finding::ThinChannel { thickness, length } => format!(
+            "The channel is {} thick, {} spin diffusion lengths, yet taken as semi-infinite: its thickness does not enter. State another `end`.",
+            result(thickness.si(), Scale::Length), factor(thickness.si() / length.si())
         ),
         Finding::LongChannel { thickness, length } => format!(
             "The channel, {}, is {} times its spin diffusion length: the second contact hears little of the first.",
             result(thickness.si(), Scale::Length), factor(thickness.si() / length.si())
         ),
         Finding::ThinFerromagnet { path, thickness, length, .. } => format!(
-            "{path} is {} thick, {} of its spin diffusion length, yet taken as thick. State its `end` (spin sink, reflecting, fed in plane).",
+            "{path} is {} thick, {} spin diffusion lengths, yet taken as thick. State its end (spin sink, reflecting, fed in plane).",
             result(thickness.si(), Scale::Length), factor(thickness.si() / length.si())
         ),
         Finding::ThinBarrier { path, thickness, monolayers } => format!(
@@ -98,8 +146,10 @@ pub fn finding(f: &Finding) -> String {
             result(thickness.si(), Scale::Length)
         ),
         Finding::TemperatureOutsideData { inputs, wanted } => {
-            let mut temperatures: Vec<String> = inputs.iter().map(|(_, t)| temperature(*t)).collect();
-            temperatures.dedup();
+            let mut kelvins: Vec<f64> = inputs.iter().map(|(_, t)| *t).collect();
+            kelvins.sort_by(f64::total_cmp);
+            kelvins.dedup_by(|a, b| a.to_bits() == b.to_bits());
+            let temperatures: Vec<String> = kelvins.iter().map(|t| temperature(*t)).collect();
             format!(
                 "{} of {} used at {}: {}.",
                 if inputs.len() == 1 { "A value".to_owned() } else { format!("{} values", inputs.len()) },
@@ -120,16 +170,17 @@ pub fn finding(f: &Finding) -> String {
             temperature(*record), temperature(*wanted)
         ),
         Finding::AsymmetryNearOne { name, value } => format!(
-            "{name} = {value:.2} is within its uncertainty of one, where r_F diverges: the answer is not bounded by it."
+            "{name} = {} is too near one: 1/(1 − β²) diverges there, and no measurement bounds the answer.",
+            asymmetry(*value)
         ),
-        Finding::UncertainInputsMatter { inputs } => {
+        Finding::UncertainInputsMatter { inputs, target } => {
             let list: Vec<String> = inputs
                 .iter()
                 .map(|i| {
                     format!("{} ({}, {})", i.name, percent_share(i.share), if i.recalled { "recalled" } else { "assumed" })
                 })
                 .collect();
-            format!("The answer leans on {}.", list.join(", "))
+            format!("The spread of the {} leans on {}.", target_name(*target), list.join(", "))
         }
         Finding::InterfaceLeftOut { path } => format!(
             "{path}: no record of this direct contact; it is taken without resistance, asymmetry or spin loss."
@@ -163,6 +214,16 @@ fn grouped<'a>(all: impl Iterator<Item = &'a str>) -> String {
     groups.iter().map(|(p, k)| format!("{p}: {}", k.join(", "))).collect::<Vec<_>>().join("; ")
 }
 
+/// Name of a target in a sentence.
+#[must_use]
+pub fn target_name(target: Target) -> &'static str {
+    match target {
+        Target::InjectedPolarization => "injected polarization",
+        Target::Magnetoresistance => "magnetoresistance",
+        Target::ResistanceAreaChange => "resistance-area change",
+    }
+}
+
 /// A share as a whole per cent.
 #[must_use]
 pub fn percent_share(share: f64) -> String {
@@ -184,9 +245,9 @@ pub fn position(w: &crate::studies::window::Window) -> String {
     if here <= 0.0 {
         String::new()
     } else if below.is_finite() && (above <= 0.0 || below / here < here / above) {
-        format!(", {} times too low", factor(below / here))
+        format!(", {} too low", times(below / here))
     } else if above > 0.0 {
-        format!(", {} times too high", factor(here / above))
+        format!(", {} too high", times(here / above))
     } else {
         String::new()
     }
@@ -212,7 +273,7 @@ pub fn mark(m: &Mark) -> String {
         Mark::NoSpread => "no spread known".to_owned(),
         Mark::BoundOnly => "only a bound".to_owned(),
         Mark::Borrowed { polarization } => {
-            format!("borrowed from a tunnel polarization of {polarization:.2}")
+            format!("borrowed from a tunnel polarization of {}", asymmetry(*polarization))
         }
         Mark::OtherBarrier { barrier } => format!("of another barrier, {barrier}"),
         Mark::ResistivityAssumed => "resistivity not from the same paper".to_owned(),
@@ -233,7 +294,9 @@ pub fn decided(d: Decided, among: usize) -> String {
         Decided::Dopant => "same dopant",
         Decided::Status => "preferred in the library",
         Decided::Obtained => "better obtained",
-        Decided::Order => "first in the file, nothing else told them apart",
+        Decided::Order => {
+            return format!("first of {among} records that nothing else tells apart");
+        }
     };
-    format!("{why}, of {among}")
+    format!("{why} of {among} records")
 }

@@ -175,6 +175,14 @@ pub const THICKNESS: Kind = kind(
     span(Excluding(0.0), Including(0.1), "a layer's thickness is positive, at most 10 cm"),
     Scale::Length,
 );
+/// Thickness of a tunnel barrier.
+pub const BARRIER_THICKNESS: Kind = kind(
+    "barrier thickness",
+    <Length as Measured>::DIMENSION,
+    &["1.4 nm", "6 ML"],
+    span(Excluding(0.0), Including(1e-7), "a tunnel barrier is a few nanometres thick; 100 nm is beyond any"),
+    Scale::Length,
+);
 /// Resistance-area product, both spin channels in parallel.
 pub const RESISTANCE_AREA: Kind = kind(
     "resistance-area product",

@@ -110,7 +110,7 @@ const VOLTAGE: Ladder = several(
         step("mV", -3, -3),
         step("V", 0, 0),
     ],
-    1,
+    2,
 );
 const FIELD: Ladder = one(&[step("mT", -3, 0), step("T", 0, 0)]);
 const LATTICE: Ladder = one(&[step("Å", -10, 0), step("nm", -9, -9)]);

@@ -2,24 +2,22 @@
 //! would fix it.
 
 use crate::designs::design::{Design, Part, Written};
-use crate::designs::goals::{Goal, Target};
+use crate::designs::goals::Goal;
 use crate::designs::layers::EndWord;
 use crate::devices::inputs::Input;
 use crate::devices::provenance::Origin;
-use crate::devices::vertical::{
-    Blueprint, ElementPlan, InterfaceResistancePlan, Outcome, Position, Vertical,
-};
+use crate::devices::vertical::{Blueprint, Outcome, Position, Vertical};
 use crate::documents::reader::Faults;
-use crate::materials::choose::Mark;
 use crate::materials::library::Library;
+use crate::materials::record::{ContactKind, ContactRecord, Obtained};
 use crate::materials::references::Reference;
 use crate::models::ladder::{Face, StackFault, State};
-use crate::models::validity::{self, Caveat};
-use crate::quantities::dimensions::Measured;
 use crate::quantities::meanings::ResistanceAreaProduct;
+use crate::quantities::text::Reading;
 
-use super::findings::{Finding, Named, ordered};
+use super::findings::Finding;
 use super::mismatch::{HalfMetal, Mismatch, half_metal, mismatch};
+use super::notice::notice;
 use super::shares::{Share, carriers, shares};
 use super::target::{Demand, Wish};
 use super::window::{NoWindow, Window, window};
@@ -28,10 +26,6 @@ use super::window::{NoWindow, Window, window};
 pub const DEFAULT_FRACTION: f64 = 0.5;
 /// Inputs that together carry this fraction of Σ(change)² are said to carry most of the result.
 pub const MOST: f64 = 0.8;
-/// A recalled or assumed input matters from this share on.
-const MATTERS: f64 = 0.1;
-/// A mismatch is pointed out when the channel's spin impedance exceeds the contact's by this factor.
-const MISMATCH: f64 = 10.0;
 
 /// A goal with its outcome.
 #[derive(Clone, PartialEq, Debug)]
@@ -75,9 +69,11 @@ pub struct CheckValue {
     /// Record.
     pub record: String,
     /// What it is, in the record's word.
-    pub kind: &'static str,
+    pub kind: ContactKind,
+    /// Whether it is a resistance-area product, else a polarization.
+    pub is_resistance_area: bool,
     /// Value and spread.
-    pub reading: crate::quantities::text::Reading,
+    pub reading: Reading,
     /// Temperature, K.
     pub temperature: Option<f64>,
     /// Reference.
@@ -198,7 +194,7 @@ pub fn assess(design: &Design, device: Vertical, library: &Library) -> Result<As
         references: Vec::new(),
         device,
     };
-    assessment.findings = find(&assessment, design, library);
+    assessment.findings = notice(&assessment, design, library);
     assessment.references = references(&assessment, library);
     Ok(assessment)
 }
@@ -235,20 +231,23 @@ fn check_values(design: &Design, device: &Vertical, library: &Library) -> Vec<Ch
         .into_iter()
         .filter(|(_, b, c)| *b == barrier && c.as_deref() == Some(n.as_str()))
         .filter_map(|(id, _, _)| library.interface(&id, &faults))
-        .flat_map(|i| {
-            i.contacts
-                .iter()
-                .filter_map(|c| {
-                    Some(CheckValue {
-                        record: c.common.id.clone(),
-                        kind: c.kind.word(),
-                        reading: c.polarization.clone()?,
-                        temperature: c.common.temperature,
-                        source: c.common.source.clone(),
-                        recalled: c.common.obtained == crate::materials::record::Obtained::Recalled,
-                    })
-                })
-                .collect::<Vec<_>>()
+        .flat_map(|i| i.contacts.iter().flat_map(check_numbers).collect::<Vec<_>>())
+        .collect()
+}
+
+fn check_numbers(c: &ContactRecord) -> Vec<CheckValue> {
+    [(false, &c.polarization), (true, &c.resistance_area)]
+        .into_iter()
+        .filter_map(|(is_resistance_area, reading)| {
+            Some(CheckValue {
+                record: c.common.id.clone(),
+                kind: c.kind,
+                is_resistance_area,
+                reading: reading.clone()?,
+                temperature: c.common.temperature,
+                source: c.common.source.clone(),
+                recalled: c.common.obtained == Obtained::Recalled,
+            })
         })
         .collect()
 }
@@ -271,212 +270,4 @@ fn references(a: &Assessment, library: &Library) -> Vec<(String, Option<Referenc
             (key, reference)
         })
         .collect()
-}
-
-fn find(a: &Assessment, design: &Design, library: &Library) -> Vec<Finding> {
-    let mut out = Vec::new();
-    if let Some(m) = &a.mismatch
-        && a.wish.target == Target::InjectedPolarization
-        && m.channel.si() > MISMATCH * m.contact.si()
-    {
-        out.push(Finding::ConductivityMismatch {
-            ratio: m.channel.si() / m.contact.si(),
-            offered: m.offered,
-            injected: a.outcome.polarization.si(),
-        });
-    }
-    find_windows(a, &mut out);
-    find_layers(a, design, library, &mut out);
-    find_inputs(a, &mut out);
-    for (end, word) in [(&a.device.left, a.ends[0]), (&a.device.right, a.ends[1])] {
-        if matches!(end, crate::devices::vertical::EndPlan::FedInPlane) {
-            out.push(Finding::StripResistanceLeftOut { end: word });
-        }
-    }
-    if !library.replaced().is_empty() {
-        out.push(Finding::RecordReplaced { ids: library.replaced().to_vec() });
-    }
-    ordered(out)
-}
-
-fn find_windows(a: &Assessment, out: &mut Vec<Finding>) {
-    let windows = a.goals.iter().map(|g| &g.window).chain(a.default_window.as_ref());
-    let mut unknown = false;
-    for window in windows {
-        match window {
-            Ok(w) if w.intervals.is_empty() => out.push(Finding::GoalOutOfReach {
-                target: w.wish.target,
-                best: w.best.value,
-                at: w.best.at,
-            }),
-            Ok(w) if !w.intervals.iter().any(|i| i.holds(w.here)) => {
-                out.push(Finding::OutsideWindow { window: Box::new(w.clone()) });
-            }
-            Err(NoWindow::NoAsymmetry) => unknown = true,
-            _ => {}
-        }
-    }
-    if unknown {
-        out.push(Finding::WindowUnknown);
-    }
-}
-
-fn find_layers(a: &Assessment, design: &Design, library: &Library, out: &mut Vec<Finding>) {
-    let channel = a.blueprint.layer(a.device.channel);
-    if let Some(layer) = channel
-        && a.device.has_two_states
-        && layer.thickness.si().is_finite()
-        && layer.thickness.si() > layer.length.si()
-    {
-        out.push(Finding::LongChannel { thickness: layer.thickness, length: layer.length });
-    }
-    for (at, stated) in
-        [(Position::LeftEnd, design.left_stated), (Position::RightEnd, design.right_stated)]
-    {
-        let assumed = !stated || design.written == Written::Stack;
-        if assumed
-            && a.device.is_ferromagnet(at)
-            && let Some(layer) = a.blueprint.layer(at)
-            && let Some(Caveat::ThinFerromagnet { .. }) = validity::ferromagnet(layer)
-        {
-            out.push(Finding::ThinFerromagnet {
-                path: a.device.name(at).map_or(String::new(), |n| n.path.clone()),
-                thickness: layer.thickness,
-                length: layer.length,
-                thick: layer.spin_resistance(),
-            });
-        }
-    }
-    let faults = Faults::default();
-    for part in &design.parts {
-        let Part::Contact(contact) = part else { continue };
-        let Some(thickness) = &contact.thickness else { continue };
-        let height = contact
-            .material
-            .as_ref()
-            .and_then(|m| library.id_of(&m.value))
-            .and_then(|id| library.material(&id, &faults))
-            .and_then(|m| m.values.iter().find(|v| v.property.name == "monolayer").map(|v| v.reading.si));
-        if let Some(height) = height
-            && thickness.value.si < 2.0 * height * (1.0 - 1e-9)
-        {
-            out.push(Finding::ThinBarrier {
-                path: contact.path.clone(),
-                thickness: thickness.value.value(),
-                monolayers: thickness.value.si / height,
-            });
-        }
-    }
-    for element in &a.device.channel_contacts {
-        let bare = matches!(
-            a.device.elements.get(*element),
-            Some(ElementPlan::Interface(plan)) if matches!(plan.resistance, InterfaceResistancePlan::Zero)
-        );
-        let channel = a.device.name(a.device.channel);
-        if !bare {
-            continue;
-        }
-        let path = a.device.name(Position::Element(*element)).map_or(String::new(), |n| n.path.clone());
-        if channel.is_some_and(|n| n.semiconductor) {
-            let other = a.device.neighbours(*element).into_iter().find(|at| a.device.is_ferromagnet(*at));
-            out.push(Finding::BareSemiconductor {
-                ferromagnet: other
-                    .and_then(|at| a.device.name(at))
-                    .map_or(String::new(), |n| n.label.clone()),
-                channel: channel.map_or(String::new(), |n| n.label.clone()),
-            });
-        } else if channel.is_some_and(|n| n.material.is_some()) {
-            out.push(Finding::InterfaceLeftOut { path });
-        }
-    }
-    if let (Some(layer), Some(j)) = (channel, a.device.current_density)
-        && a.device.name(a.device.channel).is_some_and(|n| n.semiconductor || n.material.is_none())
-    {
-        for caveat in validity::channel(layer, a.outcome.accumulation, j, a.device.temperature) {
-            match caveat {
-                Caveat::Nonlinear { accumulation, thermal } => {
-                    out.push(Finding::NotLinear { accumulation, thermal });
-                }
-                Caveat::Drift { voltage, thermal } => out.push(Finding::Drift { voltage, thermal }),
-                Caveat::ThinFerromagnet { .. } => {}
-            }
-        }
-    }
-}
-
-/// One finding a record, however many contacts borrow from it.
-fn borrowed(out: &mut Vec<Finding>, input: &str, from: &str, polarization: f64, asymmetry: f64) {
-    for finding in out.iter_mut() {
-        if let Finding::BorrowedAsymmetry { names, record, .. } = finding
-            && record == from
-        {
-            names.push(input.to_owned());
-            return;
-        }
-    }
-    out.push(Finding::BorrowedAsymmetry {
-        names: vec![input.to_owned()],
-        record: from.to_owned(),
-        polarization,
-        asymmetry,
-    });
-}
-
-fn find_inputs(a: &Assessment, out: &mut Vec<Finding>) {
-    let inputs: Vec<&Input> =
-        a.device.table.inputs().iter().chain(a.device.likely.as_ref().map(|l| &l.input)).collect();
-    let mut temperatures = Vec::new();
-    let mut dopings = Vec::new();
-    let mut wanted_doping = 0.0;
-    for input in &inputs {
-        let record = input.provenance.records().first().cloned().unwrap_or_default();
-        for mark in &input.provenance.marks {
-            match mark {
-                Mark::OtherTemperature { record, wanted } if input.name.ends_with("spin_memory_loss") => {
-                    out.push(Finding::MemoryLossOutsideTemperature { record: *record, wanted: *wanted });
-                }
-                Mark::OtherTemperature { record, .. } => temperatures.push((input.name.clone(), *record)),
-                Mark::OtherDoping { record, wanted } => {
-                    dopings.push((input.name.clone(), *record));
-                    wanted_doping = *wanted;
-                }
-                Mark::Borrowed { polarization } => {
-                    borrowed(out, &input.name, &record, *polarization, input.reading.si);
-                }
-                Mark::NearUnity if input.name.ends_with("bulk_asymmetry") => {
-                    out.push(Finding::AsymmetryNearOne {
-                        name: input.name.clone(),
-                        value: input.reading.si,
-                    });
-                }
-                _ => {}
-            }
-        }
-    }
-    if !temperatures.is_empty() {
-        out.push(Finding::TemperatureOutsideData {
-            inputs: temperatures,
-            wanted: a.device.temperature.si(),
-        });
-    }
-    if !dopings.is_empty() {
-        out.push(Finding::DopingOutsideData { inputs: dopings, wanted: wanted_doping });
-    }
-    let table = a.device.table.inputs();
-    let uncertain: Vec<Named> = a
-        .shares
-        .iter()
-        .filter(|s| s.share >= MATTERS)
-        .map(|s| (s, &table[s.column]))
-        .filter(|(_, i)| i.provenance.is_recalled() || i.provenance.is_assumed())
-        .map(|(s, i)| Named {
-            name: i.name.clone(),
-            record: i.provenance.records().first().cloned(),
-            share: s.share,
-            recalled: i.provenance.is_recalled(),
-        })
-        .collect();
-    if !uncertain.is_empty() {
-        out.push(Finding::UncertainInputsMatter { inputs: uncertain });
-    }
 }

@@ -36,23 +36,30 @@ const fn rule(name: &'static str, severity: Severity) -> Rule {
 
 /// Every rule, in the order in which findings are told.
 pub static RULES: &[Rule] = &[
+    rule("above-curie-temperature", Severity::Problem),
     rule("conductivity-mismatch", Severity::Problem),
     rule("goal-out-of-reach", Severity::Problem),
     rule("outside-window", Severity::Problem),
     rule("window-unknown", Severity::Caution),
     rule("bare-semiconductor", Severity::Caution),
+    rule("uncertain-inputs-matter", Severity::Caution),
     rule("borrowed-asymmetry", Severity::Caution),
+    rule("only-a-bound", Severity::Caution),
+    rule("near-curie-temperature", Severity::Caution),
+    rule("high-bias", Severity::Caution),
+    rule("not-linear", Severity::Caution),
+    rule("drift", Severity::Caution),
     rule("long-channel", Severity::Caution),
+    rule("thin-channel", Severity::Caution),
     rule("thin-ferromagnet", Severity::Caution),
     rule("thin-barrier", Severity::Caution),
     rule("temperature-outside-data", Severity::Caution),
     rule("doping-outside-data", Severity::Caution),
+    rule("other-dopant", Severity::Caution),
     rule("memory-loss-outside-temperature", Severity::Caution),
     rule("asymmetry-near-one", Severity::Caution),
-    rule("uncertain-inputs-matter", Severity::Caution),
     rule("interface-left-out", Severity::Caution),
-    rule("not-linear", Severity::Caution),
-    rule("drift", Severity::Caution),
+    rule("measured-otherwise", Severity::Remark),
     rule("strip-resistance-left-out", Severity::Remark),
     rule("record-replaced", Severity::Remark),
 ];
@@ -90,6 +97,8 @@ pub enum Finding {
         best: f64,
         /// Where; none for the limit of an infinite product.
         at: Option<ResistanceAreaProduct>,
+        /// Whether one contact varied alone would meet it.
+        alone: bool,
     },
     /// The design's product lies outside the window.
     OutsideWindow {
@@ -122,6 +131,56 @@ pub enum Finding {
         thickness: Thickness,
         /// λ.
         length: SpinDiffusionLength,
+    },
+    /// A channel taken as semi-infinite is thinner than 3 λ.
+    ThinChannel {
+        /// t.
+        thickness: Thickness,
+        /// λ.
+        length: SpinDiffusionLength,
+    },
+    /// A ferromagnet is used near or above its Curie temperature.
+    CurieTemperature {
+        /// Material.
+        material: String,
+        /// T_C of the record, K.
+        curie: f64,
+        /// Temperature of the design, K.
+        temperature: f64,
+        /// Record.
+        record: String,
+    },
+    /// The voltage over an interface leaves the small-bias range.
+    HighBias {
+        /// Path.
+        path: String,
+        /// Voltage over it.
+        voltage: ElectricPotential,
+        /// Barrier thickness, where stated.
+        thickness: Option<Thickness>,
+    },
+    /// Inputs of which only a bound is known.
+    OnlyABound {
+        /// Their names.
+        inputs: Vec<String>,
+    },
+    /// Records of another dopant are used, or the dopant is not one that the library knows.
+    OtherDopant {
+        /// Inputs and the dopants of their records.
+        inputs: Vec<(String, String)>,
+        /// Dopant of the design.
+        wanted: String,
+    },
+    /// A published value of the same contact differs by more than ten times.
+    MeasuredOtherwise {
+        /// Record.
+        record: String,
+        /// What it is.
+        what: &'static str,
+        /// Published value, SI.
+        published: f64,
+        /// Value of the design or its answer, SI.
+        here: f64,
     },
     /// A ferromagnet taken as thick is thinner than 3 λ.
     ThinFerromagnet {
@@ -164,15 +223,17 @@ pub enum Finding {
         /// Temperature of the design, K.
         wanted: f64,
     },
-    /// β is within its uncertainty of ±1.
+    /// β or γ is within its uncertainty of ±1, or nearer to it than measurements support.
     AsymmetryNearOne {
         /// Input.
         name: String,
-        /// β.
+        /// β or γ.
         value: f64,
     },
     /// Recalled or assumed inputs carry a good part of the answer.
     UncertainInputsMatter {
+        /// What they carry the spread of.
+        target: Target,
         /// The inputs.
         inputs: Vec<Named>,
     },
@@ -217,6 +278,15 @@ impl Finding {
             Self::OutsideWindow { .. } => "outside-window",
             Self::WindowUnknown => "window-unknown",
             Self::BareSemiconductor { .. } => "bare-semiconductor",
+            Self::ThinChannel { .. } => "thin-channel",
+            Self::CurieTemperature { curie, temperature, .. } if temperature > curie => {
+                "above-curie-temperature"
+            }
+            Self::CurieTemperature { .. } => "near-curie-temperature",
+            Self::HighBias { .. } => "high-bias",
+            Self::OnlyABound { .. } => "only-a-bound",
+            Self::OtherDopant { .. } => "other-dopant",
+            Self::MeasuredOtherwise { .. } => "measured-otherwise",
             Self::BorrowedAsymmetry { .. } => "borrowed-asymmetry",
             Self::LongChannel { .. } => "long-channel",
             Self::ThinFerromagnet { .. } => "thin-ferromagnet",

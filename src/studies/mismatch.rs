@@ -20,7 +20,9 @@ pub struct Mismatch {
     pub channel: ResistanceTimesArea,
     /// Spin source of the contact's side over its impedance: what it would inject without mismatch.
     pub offered: f64,
-    /// Share of the spin source that lies on the far side (a second contact), as polarization.
+    /// What of it crosses: its part of the injected polarization.
+    pub crossing: f64,
+    /// What the far side (a second contact) adds to the injected polarization.
     pub from_far_side: f64,
     /// r_N = ρλ of the channel.
     pub r_channel: SpinResistance,
@@ -72,6 +74,7 @@ pub fn mismatch(device: &Vertical, blueprint: &Blueprint) -> Result<Option<Misma
         contact: ResistanceTimesArea::from_si(contact),
         channel: ResistanceTimesArea::from_si(channel),
         offered: if contact > 0.0 { source / contact } else { 0.0 },
+        crossing: if contact + channel > 0.0 { source / (contact + channel) } else { 0.0 },
         from_far_side: if contact + channel > 0.0 { far / (contact + channel) } else { 0.0 },
         r_channel: n.spin_resistance(),
         r_ferromagnet: f.spin_resistance(),

@@ -4,6 +4,7 @@
 pub mod assess;
 pub mod findings;
 pub mod mismatch;
+mod notice;
 pub mod shares;
 pub mod target;
 pub mod vary;

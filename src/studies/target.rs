@@ -3,7 +3,6 @@
 use crate::designs::goals::{Comparison, Goal, GoalState, Target};
 use crate::devices::vertical::{Blueprint, Outcome, Vertical};
 use crate::models::ladder::StackFault;
-use crate::quantities::dimensions::Measured;
 
 /// A target in a magnetic state.
 #[derive(Clone, Copy, PartialEq, Debug)]
@@ -30,17 +29,21 @@ impl Wish {
         Self { target, state: GoalState::Parallel }
     }
 
+    /// Its column in [`Outcome::COLUMNS`].
+    #[must_use]
+    pub fn column(&self) -> usize {
+        match (self.target, self.state) {
+            (Target::InjectedPolarization, GoalState::Parallel) => 0,
+            (Target::InjectedPolarization, GoalState::Antiparallel) => 1,
+            (Target::ResistanceAreaChange, _) => 5,
+            (Target::Magnetoresistance, _) => 6,
+        }
+    }
+
     /// Its value in an outcome, SI.
     #[must_use]
     pub fn of_outcome(&self, outcome: &Outcome) -> f64 {
-        match (self.target, self.state) {
-            (Target::InjectedPolarization, GoalState::Parallel) => outcome.polarization.si(),
-            (Target::InjectedPolarization, GoalState::Antiparallel) => {
-                outcome.polarization_antiparallel.si()
-            }
-            (Target::Magnetoresistance, _) => outcome.magnetoresistance.si(),
-            (Target::ResistanceAreaChange, _) => outcome.resistance_area_change.si(),
-        }
+        outcome.si()[self.column()]
     }
 
     /// Its value for a blueprint, SI.

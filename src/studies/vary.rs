@@ -1,6 +1,7 @@
 //! One field of a design followed over a range.
 
 use crate::designs::design::read_design;
+use crate::designs::goals::Goal;
 use crate::designs::variation::Variation;
 use crate::devices::resolve;
 use crate::devices::vertical::{Outcome, Vertical};
@@ -9,6 +10,8 @@ use crate::documents::overlay::lay_over;
 use crate::documents::reader::Faults;
 use crate::documents::tree::Node;
 use crate::materials::library::Library;
+
+use super::target::Wish;
 
 /// Answers along a range.
 #[derive(Clone, Debug)]
@@ -19,6 +22,10 @@ pub struct Varied {
     pub rows: Vec<VariedRow>,
     /// Device of the first point, for the names of its parts.
     pub device: Vertical,
+    /// Goals of the design.
+    pub goals: Vec<Goal>,
+    /// Whether the field decides which records are chosen, so that steps are changes of record.
+    pub chooses_records: bool,
 }
 
 /// One point.
@@ -26,11 +33,19 @@ pub struct Varied {
 pub struct VariedRow {
     /// Value of the field, SI.
     pub value: f64,
-    /// Answer.
+    /// Answer, columns as in [`Outcome::COLUMNS`].
     pub outcome: [f64; Outcome::COLUMNS.len()],
+    /// Whether every goal is met.
+    pub goals_met: bool,
 }
 
-fn device_at(root: &Node, variation: &Variation, point: usize, library: &Library, faults: &Faults) -> Option<Vertical> {
+fn device_at(
+    root: &Node,
+    variation: &Variation,
+    point: usize,
+    library: &Library,
+    faults: &Faults,
+) -> Option<(Vertical, Vec<Goal>)> {
     let mut tree = root.clone();
     let setting = variation.settings.get(point)?;
     if let Err(fault) = lay_over(&mut tree, setting) {
@@ -41,14 +56,19 @@ fn device_at(root: &Node, variation: &Variation, point: usize, library: &Library
     if faults.count() > 0 {
         return None;
     }
-    resolve(&design, library, faults)
+    Some((resolve(&design, library, faults)?, design.goals))
+}
+
+fn row(value: f64, outcome: [f64; Outcome::COLUMNS.len()], goals: &[Goal]) -> VariedRow {
+    let goals_met = goals.iter().all(|g| g.comparison.met(outcome[Wish::of(g).column()]));
+    VariedRow { value, outcome, goals_met }
 }
 
 /// Follows a field. Where it is an input of the device, one column of the input matrix moves; where it
 /// decides which records are chosen (temperature, doping), the device is resolved again at each point.
 /// Either way each row equals a single run with that value set.
 pub fn vary(root: &Node, variation: Variation, library: &Library, faults: &Faults) -> Option<Varied> {
-    let device = device_at(root, &variation, 0, library, faults)?;
+    let (device, goals) = device_at(root, &variation, 0, library, faults)?;
     let readings: Option<Vec<f64>> = variation
         .points
         .iter()
@@ -65,10 +85,7 @@ pub fn vary(root: &Node, variation: Variation, library: &Library, faults: &Fault
             values
                 .iter()
                 .zip(results.rows())
-                .map(|(value, row)| VariedRow {
-                    value: *value,
-                    outcome: std::array::from_fn(|i| row[i]),
-                })
+                .map(|(value, found)| row(*value, std::array::from_fn(|i| found[i]), &goals))
                 .collect()
         }
         (_, values) => {
@@ -85,15 +102,16 @@ pub fn vary(root: &Node, variation: Variation, library: &Library, faults: &Fault
             }
             let mut rows = Vec::new();
             for point in 0..variation.points.len() {
-                let here = device_at(root, &variation, point, library, faults)?;
+                let (here, _) = device_at(root, &variation, point, library, faults)?;
                 let outcome = here.evaluate(here.table.central().view()).ok()?.si();
                 let value = values.as_ref().and_then(|v| v.get(point)).copied().unwrap_or(f64::NAN);
-                rows.push(VariedRow { value, outcome });
+                rows.push(row(value, outcome, &goals));
             }
             rows
         }
     };
-    Some(Varied { variation, rows, device })
+    let chooses_records = column.is_none();
+    Some(Varied { variation, rows, device, goals, chooses_records })
 }
 
 /// Fields that decide which records are chosen rather than being inputs themselves.

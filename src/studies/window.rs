@@ -66,8 +66,8 @@ pub struct Window {
     pub here: ResistanceAreaProduct,
     /// Element of the reference contact.
     pub contact: usize,
-    /// How many contacts are scaled together.
-    pub together: usize,
+    /// Elements of the contacts that are scaled together.
+    pub contacts: Vec<usize>,
     /// γ used at the reference contact.
     pub asymmetry: InterfaceAsymmetry,
     /// Whether that γ belongs to no contact of the design but to one it might have.
@@ -183,7 +183,7 @@ pub fn window(
         },
         here: ResistanceAreaProduct::from_si(here),
         contact: reference,
-        together: contacts.len(),
+        contacts: contacts.to_vec(),
         asymmetry,
         asymmetry_is_likely,
     })
