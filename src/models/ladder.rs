@@ -53,10 +53,8 @@ pub enum Magnetization {
 
 impl Magnetization {
     fn sign(self) -> f64 {
-        match self {
-            Self::Fixed | Self::Free => 1.0,
-            Self::FixedOpposite => -1.0,
-        }
+        // A look-up, not a branch: see `Stack::weighed`.
+        [1.0, -1.0, 1.0][self as usize]
     }
 }
 
@@ -144,10 +142,6 @@ pub struct Stack {
     left: End,
     right: End,
     rungs: Vec<Rung>,
-    turns: Vec<bool>,
-    resistances: Vec<f64>,
-    /// T = t/λ of each layer, δ of each interface. Only [`Stack::inside`] needs it.
-    reduced: Vec<f64>,
 }
 
 /// Spin current and spin accumulation at one face.
@@ -183,40 +177,53 @@ pub struct Sides {
     pub right_source: f64,
 }
 
-/// Rung, series resistance, reduced thickness and whether it flips.
-fn rung_of(element: &Element) -> (Rung, f64, f64, bool) {
+fn rung_of(element: &Element) -> Rung {
     match element {
         Element::Layer(layer) => {
             let t = layer.thickness.si() / layer.length.si();
             let r = layer.spin_resistance().si();
-            let resistance = layer.resistivity.si() * layer.thickness.si();
-            let beta = layer.asymmetry.si() * layer.magnetization.sign();
-            (layer_rung(r, t, beta), resistance, t, layer.magnetization == Magnetization::Free)
+            Rung {
+                resistance: layer.resistivity.si() * layer.thickness.si(),
+                ..layer_rung(r, t, layer.asymmetry.si(), layer.magnetization)
+            }
         }
         Element::Interface(interface) => {
             let r_b = interface.spin_resistance.si();
-            let gamma = interface.asymmetry.si() * interface.magnetization.sign();
+            let gamma = interface.asymmetry.si();
             let delta = interface.memory_loss.si();
-            let resistance = interface.spin_resistance.resistance_area(interface.asymmetry).si();
             let rung = if delta > 0.0 && r_b > 0.0 {
-                layer_rung(r_b / delta, delta, gamma)
+                layer_rung(r_b / delta, delta, gamma, interface.magnetization)
             } else {
-                Rung { series: r_b, shunt: 0.0, pass: 1.0, bend: 0.0, reach: 0.5 * r_b, asymmetry: gamma }
+                Rung {
+                    series: r_b,
+                    shunt: 0.0,
+                    pass: 1.0,
+                    reach: 0.5 * r_b,
+                    ..layer_rung(1.0, 0.0, gamma, interface.magnetization)
+                }
             };
-            (rung, resistance, delta, interface.magnetization == Magnetization::Free)
+            Rung {
+                resistance: interface.spin_resistance.resistance_area(interface.asymmetry).si(),
+                reduced: delta,
+                ..rung
+            }
         }
     }
 }
 
-fn layer_rung(r: f64, t: f64, asymmetry: f64) -> Rung {
+/// Rung of a layer of spin resistance `r` and reduced thickness `t`, its resistance left 0.
+#[inline]
+fn layer_rung(r: f64, t: f64, asymmetry: f64, magnetization: Magnetization) -> Rung {
     let f = reduced(t);
     Rung {
         series: r * f.tanh,
-        shunt: f.tanh / r,
+        shunt: f.tanh * r.recip(),
         pass: f.sech,
-        bend: f.tanh * f.half_tanh,
         reach: r * f.half_tanh,
-        asymmetry,
+        asymmetry: asymmetry * magnetization.sign(),
+        turns: magnetization == Magnetization::Free,
+        resistance: 0.0,
+        reduced: t,
     }
 }
 
@@ -229,11 +236,9 @@ fn layer_rung(r: f64, t: f64, asymmetry: f64) -> Rung {
 fn rise(rung: &Rung, own: f64, left: At, right: At) -> f64 {
     let by_current = rung.reach * (2.0 * own.abs() + left.current.abs() + right.current.abs());
     let by_accumulation = left.accumulation.abs() + right.accumulation.abs();
-    if by_current <= by_accumulation {
-        rung.reach * ((own - left.current) + (own - right.current))
-    } else {
-        right.accumulation - left.accumulation
-    }
+    let from_current = rung.reach * ((own - left.current) + (own - right.current));
+    let from_accumulation = right.accumulation - left.accumulation;
+    if by_current <= by_accumulation { from_current } else { from_accumulation }
 }
 
 impl Stack {
@@ -252,23 +257,10 @@ impl Stack {
                 return Err(StackFault::FedInterface);
             }
         }
-        let mut stack = Self {
-            left,
-            right,
-            rungs: Vec::with_capacity(elements.len()),
-            turns: Vec::with_capacity(elements.len()),
-            resistances: Vec::with_capacity(elements.len()),
-            reduced: Vec::with_capacity(elements.len()),
-        };
-        for element in elements {
-            let (rung, resistance, reduced, turns) = rung_of(element);
-            stack.rungs.push(rung);
-            stack.turns.push(turns);
-            stack.resistances.push(resistance);
-            stack.reduced.push(reduced);
-        }
+        let rungs = elements.iter().map(rung_of).collect();
+        let mut stack = Self { left, right, rungs };
         for k in [stack.fed(true), stack.fed(false)].into_iter().flatten() {
-            stack.resistances[k] = 0.0;
+            stack.rungs[k].resistance = 0.0;
         }
         Ok(stack)
     }
@@ -298,7 +290,7 @@ impl Stack {
             End::Reflecting => Passed { num: 1.0, den: 0.0, src: 0.0 },
             End::FedInPlane => {
                 let src =
-                    outermost.map_or(0.0, |i| weight(self.rungs[i].asymmetry, self.turns[i]));
+                    outermost.map_or(0.0, |i| weight(self.rungs[i].asymmetry, self.rungs[i].turns));
                 Passed { num: 1.0, den: 0.0, src }
             }
         }
@@ -309,7 +301,7 @@ impl Stack {
         let last = self.rungs.len().checked_sub(1);
         let left = self.end(&self.left, last.map(|_| 0), weight);
         let right = self.end(&self.right, last, weight);
-        let mut faces = sweep(left, right, &self.rungs, |i, rung| weight(rung.asymmetry, self.turns[i]));
+        let mut faces = sweep(left, right, &self.rungs, |rung| weight(rung.asymmetry, rung.turns));
         // At the far face of a strip fed in its plane u' = 0, so that u there is u of the near face times
         // sech(t/λ); what the sweep gives there is the difference of two terms of the size of βr·coth(t/λ).
         for (fed, outer, inner) in [
@@ -318,8 +310,9 @@ impl Stack {
         ] {
             if let Some(k) = fed {
                 faces[outer] = At {
-                    current: weight(self.rungs[k].asymmetry, self.turns[k]),
+                    current: weight(self.rungs[k].asymmetry, self.rungs[k].turns),
                     accumulation: faces[inner].accumulation * self.rungs[k].pass,
+                    potential: 0.0,
                 };
             }
         }
@@ -339,17 +332,24 @@ impl Stack {
                 layer.magnetization == Magnetization::Free,
             ),
             End::FedInPlane => {
-                self.fed(left).map_or(0.0, |k| weight(self.rungs[k].asymmetry, self.turns[k]))
+                self.fed(left).map_or(0.0, |k| weight(self.rungs[k].asymmetry, self.rungs[k].turns))
             }
             End::SpinSink | End::Reflecting => 0.0,
         }
     }
 
     fn weight(state: State) -> impl Fn(f64, bool) -> f64 + Copy {
-        move |asymmetry, turns| match state {
-            State::Antiparallel if turns => -asymmetry,
-            _ => asymmetry,
+        match state {
+            State::Parallel => Self::weighed(1.0, 1.0),
+            State::Antiparallel => Self::weighed(1.0, -1.0),
         }
+    }
+
+    /// Weighs an asymmetry by one factor if it stays and by another if it turns. A look-up, not a branch:
+    /// in a long stack nobody can guess which magnets turn.
+    fn weighed(stays: f64, turns: f64) -> impl Fn(f64, bool) -> f64 + Copy {
+        let factors = [stays, turns];
+        move |asymmetry, turned| asymmetry * factors[usize::from(turned)]
     }
 
     /// Solves the stack in one magnetic state.
@@ -359,27 +359,28 @@ impl Stack {
     #[must_use]
     pub fn solve(&self, state: State) -> Solution {
         let weight = Self::weight(state);
-        let faces = self.driven(weight);
+        let mut faces = self.driven(weight);
         let first = faces.first().map_or(0.0, |f| f.accumulation);
         let last = faces.last().map_or(0.0, |f| f.accumulation);
         let outer_left = Self::outer_resistance(&self.left) + self.outer_asymmetry(true, weight) * first;
         let outer_right = Self::outer_resistance(&self.right) - self.outer_asymmetry(false, weight) * last;
         let mut potential = outer_right;
-        let mut out: Vec<Face> = Vec::with_capacity(faces.len());
-        for (k, at) in faces.iter().enumerate().rev() {
-            if let (Some(rung), Some(right)) = (self.rungs.get(k), faces.get(k + 1)) {
-                let a = weight(rung.asymmetry, self.turns[k]);
-                potential += self.resistances[k] + a * rise(rung, a, *at, *right);
+        let mut right: Option<At> = None;
+        for (k, at) in faces.iter_mut().enumerate().rev() {
+            if let (Some(rung), Some(right)) = (self.rungs.get(k), right) {
+                let a = weight(rung.asymmetry, rung.turns);
+                potential += rung.resistance + a * rise(rung, a, *at, right);
             }
-            out.push(Face {
-                polarization: CurrentSpinPolarization::from_si(at.current),
-                accumulation_per_current_density: ResistanceTimesArea::from_si(at.accumulation),
-                potential_per_current_density: ResistanceTimesArea::from_si(potential),
-            });
+            at.potential = potential;
+            right = Some(*at);
         }
-        out.reverse();
+        let face = |at: At| Face {
+            polarization: CurrentSpinPolarization::from_si(at.current),
+            accumulation_per_current_density: ResistanceTimesArea::from_si(at.accumulation),
+            potential_per_current_density: ResistanceTimesArea::from_si(at.potential),
+        };
         Solution {
-            faces: out,
+            faces: faces.into_iter().map(face).collect(),
             resistance_area: ResistanceAreaProduct::from_si(potential + outer_left),
         }
     }
@@ -412,15 +413,14 @@ impl Stack {
     /// The two resistances, which agree in most of their digits, are never subtracted.
     #[must_use]
     pub fn resistance_area_change(&self) -> ResistanceAreaChange {
-        let drive = |asymmetry: f64, turns: bool| if turns { asymmetry } else { 0.0 };
-        let read = |asymmetry: f64, turns: bool| if turns { 0.0 } else { asymmetry };
+        let (drive, read) = (Self::weighed(0.0, 1.0), Self::weighed(1.0, 0.0));
         let faces = self.driven(drive);
         let first = faces.first().map_or(0.0, |f| f.accumulation);
         let last = faces.last().map_or(0.0, |f| f.accumulation);
         let mut sum = self.outer_asymmetry(true, read) * first - self.outer_asymmetry(false, read) * last;
         for (i, rung) in self.rungs.iter().enumerate() {
             // What reads is not driven: its own source is 0 here.
-            sum += read(rung.asymmetry, self.turns[i]) * rise(rung, 0.0, faces[i], faces[i + 1]);
+            sum += read(rung.asymmetry, rung.turns) * rise(rung, 0.0, faces[i], faces[i + 1]);
         }
         ResistanceAreaChange::from_si(-4.0 * sum)
     }
@@ -440,8 +440,8 @@ impl Stack {
         let last = self.rungs.len().checked_sub(1);
         let left = self.end(&self.left, last.map(|_| 0), weight);
         let right = self.end(&self.right, last, weight);
-        let (l, r) = parts_at(left, right, &self.rungs, k.min(self.rungs.len()), |i, rung| {
-            weight(rung.asymmetry, self.turns[i])
+        let (l, r) = parts_at(left, right, &self.rungs, k.min(self.rungs.len()), |rung| {
+            weight(rung.asymmetry, rung.turns)
         });
         // A closed end has d = 0: its impedance is infinite and it offers no source.
         let ratio = |n: f64, d: f64, closed: f64| if d > 0.0 { n / d } else { closed };
@@ -463,7 +463,7 @@ impl Stack {
             return Some(if fraction < 0.5 { *left } else { *right });
         }
         let x = fraction.clamp(0.0, 1.0);
-        let t = self.reduced[k];
+        let t = rung.reduced;
         // sinh(aT)/sinh(T): what a face contributes at the distance (1 − a)t from it.
         let part = |a: f64| {
             if a <= 0.0 {
@@ -475,7 +475,7 @@ impl Stack {
             }
         };
         let (wl, wr) = (part(1.0 - x), part(x));
-        let b = Self::weight(state)(rung.asymmetry, self.turns[k]);
+        let b = Self::weight(state)(rung.asymmetry, rung.turns);
         let (pl, pr) = (left.polarization.si(), right.polarization.si());
         let (ul, ur) = (
             left.accumulation_per_current_density.si(),
@@ -483,7 +483,7 @@ impl Stack {
         );
         let u = ul * wl + ur * wr;
         let potential = left.potential_per_current_density.si()
-            - self.resistances[k] * x
+            - rung.resistance * x
             - b * (u - ul);
         Some(Face {
             polarization: CurrentSpinPolarization::from_si(b + (pl - b) * wl + (pr - b) * wr),

@@ -10,13 +10,17 @@
 //! ```text
 //! layer of spin resistance r, thickness T = t/λ, asymmetry β      n' = n + r·tanh T·d
 //!                                                                d' = d + (tanh T/r)·n
-//!                                                                s' = s·sech T + β(r·tanh T·d + tanh T·tanh(T/2)·n)
+//!                                                                s' = s·sech T + β(r·tanh T·d + r·tanh(T/2)·(tanh T/r)·n)
 //! interface of spin resistance r_b*, asymmetry γ                  n' = n + r_b*·d,  d' = d,  s' = s + γ r_b*·d
 //! at a face                                                       J = (s_l d_r + s_r d_l)/(n_l d_r + n_r d_l)
 //!                                                                u = (n_l s_r − s_l n_r)/(n_l d_r + n_r d_l)
 //! ```
 //!
-//! An interface is the same five coefficients as a layer with other values, so one loop serves both.
+//! An interface is the same coefficients as a layer with other values, so one loop serves both.
+//!
+//! # Cost
+//! The answer's own memory holds what lies to the left of every face until the sweep from the right
+//! arrives, so a solution costs its faces and nothing else.
 //!
 //! # Accuracy
 //! n and d are sums of non-negative terms: nothing cancels in the impedances. Only sources of opposite
@@ -34,12 +38,16 @@ pub(super) struct Rung {
     pub shunt: f64,
     /// sech T of a layer, 1 of an interface.
     pub pass: f64,
-    /// tanh T·tanh(T/2) of a layer, 0 of an interface.
-    pub bend: f64,
     /// r·tanh(T/2) of a layer, r_b*/2 of an interface. Ω m². Weighs J at both faces in the voltage.
     pub reach: f64,
     /// β or γ, signed by the magnetization in the parallel state.
     pub asymmetry: f64,
+    /// Whether the asymmetry turns between the two magnetic states.
+    pub turns: bool,
+    /// What it adds to RA besides its accumulation. Ω m².
+    pub resistance: f64,
+    /// T = t/λ of a layer, δ of an interface.
+    pub reduced: f64,
 }
 
 /// Ratio form of the part already passed: numerator and denominator of Z, and the source.
@@ -58,29 +66,46 @@ impl Passed {
     /// The part seen after one more rung whose asymmetry is `asymmetry` (0 where it is not driven).
     #[inline]
     fn after(self, rung: &Rung, asymmetry: f64) -> Self {
-        let lift = rung.series * self.den;
-        let mut next = Self {
-            num: self.num + lift,
+        // What does not depend on the part passed is multiplied first: the chain from rung to rung is
+        // one product and one sum for the impedance, and little more for the source.
+        let (lift, bend) = (asymmetry * rung.series, asymmetry * (rung.reach * rung.shunt));
+        let next = Self {
+            num: self.num + rung.series * self.den,
             den: self.den + rung.shunt * self.num,
-            src: self.src * rung.pass + asymmetry * (lift + rung.bend * self.num),
+            src: self.src * rung.pass + (lift * self.den + bend * self.num),
         };
-        if next.num.max(next.den) > CEILING {
-            let down = CEILING.recip();
-            next.num *= down;
-            next.den *= down;
-            next.src *= down;
-        }
-        next
+        // Neither is negative, so the sum stands for the larger of the two.
+        if next.num + next.den > CEILING { next.lowered() } else { next }
+    }
+
+    #[cold]
+    fn lowered(self) -> Self {
+        let down = CEILING.recip();
+        Self { num: self.num * down, den: self.den * down, src: self.src * down }
     }
 }
 
-/// Spin current and spin accumulation at a face, per unit charge current density.
+/// Spin current, spin accumulation and mean potential at a face, per unit charge current density.
 #[derive(Clone, Copy, PartialEq, Debug)]
 pub(super) struct At {
     /// J/j.
     pub current: f64,
     /// u/j in the sign of the published equations, Ω m².
     pub accumulation: f64,
+    /// (V↑ + V↓)/2j, Ω m². The sweep leaves it 0; the ladder sums it up.
+    pub potential: f64,
+}
+
+impl At {
+    /// A face not yet told: its three numbers are those of the part to its left.
+    fn holding(left: Passed) -> Self {
+        Self { current: left.num, accumulation: left.den, potential: left.src }
+    }
+
+    /// The part that [`At::holding`] put there.
+    fn held(self) -> Passed {
+        Passed { num: self.current, den: self.accumulation, src: self.potential }
+    }
 }
 
 /// J and u where two parts meet.
@@ -91,33 +116,33 @@ fn meet(left: Passed, right: Passed) -> At {
         current: (left.src * right.den + right.src * left.den) * inverse,
         // Turned sign: see the module text.
         accumulation: (left.src * right.num - left.num * right.src) * inverse,
+        potential: 0.0,
     }
 }
 
 /// J and u at every face, from the left end to the right end: `rungs.len() + 1` entries.
 ///
-/// `asymmetry(i, rung)` gives the asymmetry with which rung i is driven; the ends carry their own source.
+/// `asymmetry(rung)` gives the asymmetry with which a rung is driven; the ends carry their own source.
 pub(super) fn sweep(
     left: Passed,
     right: Passed,
     rungs: &[Rung],
-    asymmetry: impl Fn(usize, &Rung) -> f64,
+    asymmetry: impl Fn(&Rung) -> f64,
 ) -> Vec<At> {
-    let mut faces = Vec::with_capacity(rungs.len() + 1);
-    let mut passed = Vec::with_capacity(rungs.len() + 1);
-    passed.push(left);
     let mut part = left;
-    for (i, rung) in rungs.iter().enumerate() {
-        part = part.after(rung, asymmetry(i, rung));
-        passed.push(part);
-    }
+    let mut faces = Vec::with_capacity(rungs.len() + 1);
+    // Not a loop of pushes: the call that might grow the vector would keep `part` out of registers.
+    faces.extend(rungs.iter().map(|rung| {
+        let here = At::holding(part);
+        part = part.after(rung, asymmetry(rung));
+        here
+    }));
+    faces.push(meet(part, right));
     let mut part = right;
-    faces.push(meet(passed[rungs.len()], part));
-    for (i, rung) in rungs.iter().enumerate().rev() {
-        part = part.after(rung, asymmetry(i, rung));
-        faces.push(meet(passed[i], part));
+    for (rung, face) in rungs.iter().zip(&mut faces).rev() {
+        part = part.after(rung, asymmetry(rung));
+        *face = meet(face.held(), part);
     }
-    faces.reverse();
     faces
 }
 
@@ -128,15 +153,15 @@ pub(super) fn parts_at(
     right: Passed,
     rungs: &[Rung],
     k: usize,
-    asymmetry: impl Fn(usize, &Rung) -> f64,
+    asymmetry: impl Fn(&Rung) -> f64,
 ) -> (Passed, Passed) {
     let mut l = left;
-    for (i, rung) in rungs.iter().enumerate().take(k) {
-        l = l.after(rung, asymmetry(i, rung));
+    for rung in rungs.iter().take(k) {
+        l = l.after(rung, asymmetry(rung));
     }
     let mut r = right;
-    for (i, rung) in rungs.iter().enumerate().skip(k).rev() {
-        r = r.after(rung, asymmetry(i, rung));
+    for rung in rungs.iter().skip(k).rev() {
+        r = r.after(rung, asymmetry(rung));
     }
     (l, r)
 }

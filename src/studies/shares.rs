@@ -44,7 +44,9 @@ pub fn shares(device: &Vertical, wish: Wish) -> Result<Vec<Share>, StackFault> {
             s.share = s.change * s.change / total;
         }
     }
-    all.sort_by(|a, b| b.share.total_cmp(&a.share).then(a.column.cmp(&b.column)));
+    // Equal shares differ in the last bits: the order of the table breaks the tie.
+    let whole = |s: &Share| (s.share * 1e9).round();
+    all.sort_by(|a, b| whole(b).total_cmp(&whole(a)).then(a.column.cmp(&b.column)));
     Ok(all)
 }
 
