@@ -232,13 +232,14 @@ fn layer_rung(r: f64, t: f64, asymmetry: f64, magnetization: Magnetization) -> R
 /// The same number has two forms: the difference itself, and reach·(2·own − p_left − p_right), which is what
 /// the diffusion equation makes of it. The first loses digits where u hardly changes (a layer much thinner
 /// than λ), the second where the current already has the polarization of the layer and `reach` is large
-/// (β near 1). Each subtracts at the size of its terms, so the form with the smaller terms is taken.
+/// (β near 1). Each subtracts at the size of its terms, so the form with the smaller terms is taken; near a
+/// tie it is the second, because u, a product with a resistance, runs out of exponent before J does.
 fn rise(rung: &Rung, own: f64, left: At, right: At) -> f64 {
     let by_current = rung.reach * (2.0 * own.abs() + left.current.abs() + right.current.abs());
     let by_accumulation = left.accumulation.abs() + right.accumulation.abs();
     let from_current = rung.reach * ((own - left.current) + (own - right.current));
     let from_accumulation = right.accumulation - left.accumulation;
-    if by_current <= by_accumulation { from_current } else { from_accumulation }
+    if by_current <= 4.0 * by_accumulation { from_current } else { from_accumulation }
 }
 
 impl Stack {

@@ -222,8 +222,8 @@ fn change_of_resistance() {
             close_at(&what, got, 0.0, 0.0);
             nothing += 1;
         } else if want.abs() < f64::MIN_POSITIVE {
-            // Below 2.2e-308 a double has few digits left; the sources on the way to this one have three.
-            close_at(&what, got, want, 1e-3);
+            // Below 2.2e-308 a double has few digits left; the sources on the way to this one have six.
+            close_at(&what, got, want, 1e-5);
             subnormal += 1;
         } else if want.abs() >= CANCELS * scale {
             close_at(&what, got, want, ALLOWED);
