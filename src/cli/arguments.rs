@@ -94,9 +94,9 @@ pub struct Assess {
     /// How the answer is written
     #[arg(long, value_enum, default_value_t = Format::Table)]
     pub format: Format,
-    /// Width of tables in characters [default: COLUMNS, the terminal, or 80]
-    #[arg(long, value_name = "N")]
-    pub width: Option<usize>,
+    /// Width in characters, 60 to 400 [default: COLUMNS, the terminal, or 80]
+    #[arg(long, value_name = "N", value_parser = clap::value_parser!(u16).range(60..=400))]
+    pub width: Option<u16>,
     /// Folders.
     #[command(flatten)]
     pub folders: Folders,
@@ -116,9 +116,9 @@ pub enum MaterialsCommand {
 /// `materials list`.
 #[derive(Debug, Args)]
 pub struct List {
-    /// Width of tables in characters
-    #[arg(long, value_name = "N")]
-    pub width: Option<usize>,
+    /// Width in characters, 60 to 400
+    #[arg(long, value_name = "N", value_parser = clap::value_parser!(u16).range(60..=400))]
+    pub width: Option<u16>,
     /// Folders.
     #[command(flatten)]
     pub folders: Folders,
@@ -130,9 +130,9 @@ pub struct Show {
     /// Name or alias of a material, or name of an interface
     #[arg(value_name = "NAME")]
     pub name: String,
-    /// Width of tables in characters
-    #[arg(long, value_name = "N")]
-    pub width: Option<usize>,
+    /// Width in characters, 60 to 400
+    #[arg(long, value_name = "N", value_parser = clap::value_parser!(u16).range(60..=400))]
+    pub width: Option<u16>,
     /// Folders.
     #[command(flatten)]
     pub folders: Folders,
@@ -149,8 +149,10 @@ pub struct Check {
 /// Designs that can be begun.
 #[derive(Clone, Copy, PartialEq, Eq, Debug, ValueEnum)]
 pub enum Beginning {
-    /// A vertical stack: the current crosses the layers one after the other
+    /// Injector, channel and perhaps detector: the current crosses the layers one after the other
     Vertical,
+    /// Any list of layers, written out
+    Stack,
 }
 
 /// `new`.
@@ -164,7 +166,7 @@ pub struct New {
 /// `findings`.
 #[derive(Debug, Args)]
 pub struct Findings {
-    /// Width of tables in characters
-    #[arg(long, value_name = "N")]
-    pub width: Option<usize>,
+    /// Width in characters, 60 to 400
+    #[arg(long, value_name = "N", value_parser = clap::value_parser!(u16).range(60..=400))]
+    pub width: Option<u16>,
 }

@@ -91,7 +91,7 @@ fn words(wrong: &Wrong) -> (String, String, Option<String>) {
             };
             (format!("unknown {what} `{found}`"), format!("no such {what}"), help)
         }
-        Wrong::Quantity { fault } => {
+        Wrong::Quantity { fault, example } => {
             let label = match (&fault.at, &fault.what) {
                 (Some(_), ReadFaultKind::Unit(_) | ReadFaultKind::Dimension { .. } | ReadFaultKind::NotASpelling { .. }) => {
                     "this unit"
@@ -99,7 +99,8 @@ fn words(wrong: &Wrong) -> (String, String, Option<String>) {
                 (Some(_), ReadFaultKind::Spread { .. }) => "here",
                 _ => "this value",
             };
-            (fault.message(), label.to_owned(), fault.help())
+            let help = fault.help().unwrap_or_else(|| format!("write it like \"{example}\""));
+            (fault.message(), label.to_owned(), Some(help))
         }
         Wrong::Conflict { reason, help } => (reason.clone(), "here".to_owned(), help.clone()),
         Wrong::NotInLibrary { what, exists, help } => {
@@ -152,6 +153,7 @@ pub fn render(faults: &[Fault], width: usize, coloured: bool) -> String {
         .with_width(width)
         .with_links(false)
         .with_break_words(false)
+        .with_word_splitter(textwrap::WordSplitter::NoHyphenation)
         .with_context_lines(1);
     let mut text = String::new();
     for fault in faults {

@@ -10,6 +10,7 @@ use crate::documents::fault::{Fault, Place, Source, Wrong};
 use crate::documents::overlay::{lay_over, read_setting};
 use crate::documents::reader::Faults;
 use crate::documents::tree::{Node, parse};
+use crate::materials::check::check;
 use crate::materials::library::Library;
 
 /// Largest file that is read.
@@ -176,6 +177,7 @@ pub fn library(folders: &[PathBuf], faults: &Faults) -> Library {
     let mut library = Library::shipped();
     for folder in folders {
         let files = record_files(folder, faults);
+        check(&files, Some(&library), true, faults);
         library.lay_over(&files, faults);
     }
     library

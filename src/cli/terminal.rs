@@ -11,10 +11,11 @@ const WIDEST: usize = 400;
 
 /// Width to lay out for: the option, else `COLUMNS`, else the terminal, else 80.
 #[must_use]
-pub fn width(option: Option<usize>) -> usize {
+pub fn width(option: Option<u16>) -> usize {
     let from_environment = || std::env::var("COLUMNS").ok().and_then(|c| c.parse().ok());
     let from_terminal = || terminal_size::terminal_size().map(|(w, _)| usize::from(w.0));
     option
+        .map(usize::from)
         .or_else(from_environment)
         .or_else(from_terminal)
         .unwrap_or(DEFAULT_WIDTH)

@@ -179,7 +179,7 @@ fn read_comparison(
                 faults.push(Fault {
                     place: Some(node.inside(fault.at.clone())),
                     field: field.to_owned(),
-                    wrong: Wrong::Quantity { fault },
+                    wrong: Wrong::quantity(fault, kind),
                 });
                 None
             }
@@ -217,7 +217,7 @@ fn read_comparison(
             faults.push(Fault {
                 place: Some(node.inside(at)),
                 field: field.to_owned(),
-                wrong: Wrong::Quantity { fault },
+                wrong: Wrong::quantity(fault, kind),
             });
             None
         }

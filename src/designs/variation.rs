@@ -134,7 +134,7 @@ pub fn read_variation(text: &str, points: usize, spacing: Option<Spacing>) -> Re
     let interval = read_interval(range, kind).map_err(|f| Fault {
         place: Some(setting.node.inside(f.at.clone())),
         field: setting.path.join("."),
-        wrong: Wrong::Quantity { fault: f },
+        wrong: Wrong::quantity(f, kind),
     })?;
     let number = |t: &str| {
         t.replace(['\u{2212}'], "-").parse::<f64>().ok()

@@ -3,6 +3,7 @@
 use std::ops::Range;
 use std::sync::Arc;
 
+use crate::quantities::kind::Kind;
 use crate::quantities::text::ReadFault;
 
 /// A text with the name it is shown under: a file path, `standard input`, an option of the command line.
@@ -93,6 +94,8 @@ pub enum Wrong {
     Quantity {
         /// Reason and help from the reader of quantities.
         fault: ReadFault,
+        /// What could be written here.
+        example: &'static str,
     },
     /// Two things that exclude each other, or one thing that needs another.
     Conflict {
@@ -110,6 +113,14 @@ pub enum Wrong {
         /// The line to write.
         help: String,
     },
+}
+
+impl Wrong {
+    /// A quantity that cannot be read, with an example of its kind.
+    #[must_use]
+    pub fn quantity(fault: ReadFault, kind: &Kind) -> Self {
+        Self::Quantity { fault, example: kind.examples.first().copied().unwrap_or("1") }
+    }
 }
 
 /// A fault at a place.

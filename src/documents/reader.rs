@@ -205,7 +205,7 @@ impl<'a> Reader<'a> {
                 self.faults.push(Fault {
                     place: Some(node.inside(fault.at.clone())),
                     field: self.path_of(key),
-                    wrong: Wrong::Quantity { fault },
+                    wrong: Wrong::quantity(fault, kind),
                 });
                 None
             }

@@ -1,8 +1,9 @@
 //! Rules that hold over a whole set of records: what one file alone cannot show.
 
 use std::collections::{BTreeMap, BTreeSet};
+use std::sync::Arc;
 
-use crate::documents::fault::{Fault, Wrong, nearest};
+use crate::documents::fault::{Fault, Place, Source, Wrong, nearest};
 use crate::documents::reader::Faults;
 
 use super::library::{Library, commons_of_interface, commons_of_material, parse_text};
@@ -41,6 +42,7 @@ pub fn check(
     let mut references = library.map_or_else(|| References::new(""), |l| l.references().clone());
     for (name, text) in files {
         if name.ends_with(".bib") {
+            counted.references += check_references(name, text, faults);
             references.lay_over(text);
             continue;
         }
@@ -52,7 +54,6 @@ pub fn check(
     }
     counted.materials = materials.len();
     counted.interfaces = interfaces.len();
-    counted.references = references.keys().count();
     let commons: Vec<&Common> = materials
         .iter()
         .flat_map(commons_of_material)
@@ -60,16 +61,6 @@ pub fn check(
         .collect();
     counted.records = commons.len();
     counted.read = commons.iter().filter(|c| c.obtained == Obtained::Read).count();
-    for key in &references.duplicates {
-        faults.push(Fault {
-            place: None,
-            field: key.clone(),
-            wrong: Wrong::Conflict {
-                reason: format!("the reference key `{key}` stands twice"),
-                help: Some("give each entry of references.bib a key of its own".to_owned()),
-            },
-        });
-    }
     unique_ids(&commons, faults);
     sources(&commons, &references, faults);
     links(&commons, library, faults);
@@ -77,8 +68,59 @@ pub fn check(
     counted
 }
 
+/// Keys that stand twice, entries that cannot be read, and references that do not say how far they were
+/// opened. Returns the number of entries.
+fn check_references(name: &str, text: &str, faults: &Faults) -> usize {
+    let own = References::new(text);
+    let source = Source::new(name, text);
+    let fault = |key: &str, reason: String, help: &str| {
+        // The last entry of that key is the one that is one too many.
+        let start = text.rfind(&format!("{{{key},")).map_or(0, |at| at + 1);
+        faults.push(Fault {
+            place: Some(Place { source: Arc::clone(&source), span: start..start + key.len() }),
+            field: key.to_owned(),
+            wrong: Wrong::Conflict { reason, help: Some(help.to_owned()) },
+        });
+    };
+    for key in &own.duplicates {
+        fault(key, "this key stands twice".to_owned(), "give each entry a key of its own");
+    }
+    for key in own.keys() {
+        match own.get(key) {
+            Ok(reference) if reference.opened.is_none() => fault(
+                key,
+                "the entry does not say how far the source was opened".to_owned(),
+                "add `opened = {full text}`, {abstract}, {quoted elsewhere} or {not opened}",
+            ),
+            Ok(_) | Err(None) => {}
+            Err(Some(reason)) => fault(
+                key,
+                format!("the entry cannot be read: {}", reason.split(':').next().unwrap_or(&reason)),
+                "check its commas and braces",
+            ),
+        }
+    }
+    own.keys().count()
+}
+
+/// A fault at a field of a record, at the record's head where the field's place is not kept.
 fn at(common: &Common, field: &str, wrong: Wrong) -> Fault {
-    Fault { place: Some(common.place.clone()), field: format!("{}: {field}", common.id), wrong }
+    let f = &common.fields;
+    let place = match field {
+        "id" => f.id.as_ref(),
+        "source" => f.source.as_ref(),
+        "obtained" => f.obtained.as_ref(),
+        _ => None,
+    };
+    let place = place.unwrap_or(&common.place).clone();
+    Fault { place: Some(place), field: format!("{}: {field}", common.id), wrong }
+}
+
+/// A fault at an id that a record names.
+fn at_link(common: &Common, field: &str, id: &str, wrong: Wrong) -> Fault {
+    let place = common.fields.links.iter().find(|(known, _)| known == id).map(|(_, p)| p);
+    let place = place.unwrap_or(&common.place).clone();
+    Fault { place: Some(place), field: format!("{}: {field}", common.id), wrong }
 }
 
 fn unique_ids(commons: &[&Common], faults: &Faults) {
@@ -124,14 +166,8 @@ fn sources(commons: &[&Common], references: &References, faults: &Faults) {
                     ));
                 }
             }
-            Err(Some(reason)) => faults.push(at(
-                common,
-                "source",
-                Wrong::Conflict {
-                    reason: format!("the reference `{key}` cannot be read: {reason}"),
-                    help: None,
-                },
-            )),
+            // Told at the entry itself.
+            Err(Some(_)) => {}
             Err(None) => faults.push(at(
                 common,
                 "source",
@@ -165,9 +201,10 @@ fn links(commons: &[&Common], library: Option<&Library>, faults: &Faults) {
         {
             match known.get(id.as_str()) {
                 Some(other) if field == "disagrees_with" && !other.disagrees_with.contains(&common.id) => {
-                    faults.push(at(
+                    faults.push(at_link(
                         common,
                         field,
+                        id,
                         Wrong::Conflict {
                             reason: format!("`{id}` does not name this record in turn"),
                             help: Some("two records that disagree name each other".to_owned()),
@@ -177,9 +214,10 @@ fn links(commons: &[&Common], library: Option<&Library>, faults: &Faults) {
                 Some(_) => {}
                 // A folder of the user may point at shipped records, which are not among its own.
                 None if shipped.contains(id) => {}
-                None => faults.push(at(
+                None => faults.push(at_link(
                     common,
                     field,
+                    id,
                     Wrong::UnknownWord {
                         what: "record id",
                         found: id.clone(),
@@ -217,20 +255,17 @@ fn known_materials(
         ids.extend(library.listed().into_iter().map(|l| l.id));
     }
     for i in interfaces {
-        let place = commons_of_interface(i).first().map(|c| c.place.clone());
-        for name in [Some(&i.ferromagnet), i.barrier.as_ref(), i.channel.as_ref()].into_iter().flatten() {
-            if !ids.contains(name) {
-                faults.push(Fault {
-                    place: place.clone(),
-                    field: i.id.clone(),
-                    wrong: Wrong::UnknownWord {
-                        what: "material",
-                        found: name.clone(),
-                        nearest: nearest(name, ids.iter().map(String::as_str)),
-                        allowed: Vec::new(),
-                    },
-                });
-            }
+        for (name, place) in i.places.iter().filter(|(name, _)| !ids.contains(name)) {
+            faults.push(Fault {
+                place: Some(place.clone()),
+                field: i.id.clone(),
+                wrong: Wrong::UnknownWord {
+                    what: "material",
+                    found: name.clone(),
+                    nearest: nearest(name, ids.iter().map(String::as_str)),
+                    allowed: Vec::new(),
+                },
+            });
         }
     }
 }

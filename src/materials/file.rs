@@ -10,7 +10,7 @@ use crate::quantities::unit::{Context, parse_unit};
 
 use super::property::{PROPERTIES, Property, property_named};
 use super::record::{
-    CalibrationRecord, Class, Common, Conditions, ContactKind, ContactRecord, InterfaceEntry,
+    CalibrationRecord, Class, Common, Conditions, ContactKind, ContactRecord, FieldPlaces, InterfaceEntry,
     LawRecord, Material, NoteRecord, Obtained, PairRecord, Prior, SpreadFrom, Status,
     TemperatureFrom, ValueRecord,
 };
@@ -155,9 +155,14 @@ fn read_interface(top: &Reader<'_>, from_user: bool, _faults: &Faults) -> Option
     let id = head.required_text("id", "for example `id = \"iron-magnesia-silicon\"`");
     let name = head.required_text("name", "for example `name = \"Iron on magnesia on n-silicon\"`");
     let ferromagnet = head.required_text("ferromagnet", "id of a ferromagnet of the library");
-    let barrier = head.text("barrier").map(|t| t.value);
-    let channel = head.text("channel").map(|t| t.value);
+    let barrier = head.text("barrier");
+    let channel = head.text("channel");
     head.finish();
+    let places = [&ferromagnet, &barrier, &channel]
+        .into_iter()
+        .flatten()
+        .map(|t| (t.value.clone(), t.place.clone()))
+        .collect();
     let owner = Owner { from_user };
     let contacts = top.tables("contact").iter().filter_map(|r| owner.contact(r)).collect();
     let calibrations = top.tables("calibration").iter().filter_map(|r| owner.calibration(r)).collect();
@@ -167,8 +172,9 @@ fn read_interface(top: &Reader<'_>, from_user: bool, _faults: &Faults) -> Option
         id: id?.value,
         name: name?.value,
         ferromagnet: ferromagnet?.value,
-        barrier,
-        channel,
+        barrier: barrier.map(|t| t.value),
+        channel: channel.map(|t| t.value),
+        places,
         contacts,
         calibrations,
         values,
@@ -225,7 +231,7 @@ impl Owner {
             .word("temperature_is", "way a temperature is known", TEMPERATURE_WORDS)
             .map_or(TemperatureFrom::Stated, |w| w.value);
         let technique = r.text("technique").map(|t| t.value);
-        let source = r.text("source").map(|t| t.value);
+        let source = r.text("source");
         let locus = r.text("locus").map(|t| t.value);
         let obtained = if r.has("obtained") {
             r.word("obtained", "way of obtaining", Obtained::WORDS).map(|w| w.value)
@@ -234,12 +240,17 @@ impl Owner {
             r.missing("obtained", "how the number was obtained: read, recalled, derived, estimated, common practice or measured here");
             None
         };
-        let parents: Vec<String> = r.texts("parents").into_iter().map(|t| t.value).collect();
+        let parents = r.texts("parents");
         let rule = r.text("rule").map(|t| t.value);
         let status =
             r.word("status", "status", STATUS_WORDS).map_or(Status::Alternative, |w| w.value);
         let why = r.text("why").map(|t| t.value);
-        let disagrees_with = r.texts("disagrees_with").into_iter().map(|t| t.value).collect();
+        let disagrees_with = r.texts("disagrees_with");
+        let links = parents
+            .iter()
+            .chain(&disagrees_with)
+            .map(|t| (t.value.clone(), t.place.clone()))
+            .collect();
         let note = r.text("note").map(|t| t.value);
         let spread_from =
             r.word("uncertainty", "origin of a spread", SPREAD_WORDS).map_or(SpreadFrom::Published, |w| w.value);
@@ -259,24 +270,32 @@ impl Owner {
         if matches!(obtained, Some(Obtained::Read | Obtained::Recalled)) && source.is_none() {
             r.missing("source", "the key of a reference in references.bib");
         }
+        let id = id?;
+        let fields = FieldPlaces {
+            id: Some(id.place),
+            source: source.as_ref().map(|t| t.place.clone()),
+            obtained: r.node("obtained").map(|n| n.place.clone()),
+            links,
+        };
         Some(Common {
-            id: id?.value,
+            id: id.value,
             temperature: temperature.map(|t| t.value.si),
             temperature_from,
             technique,
-            source,
+            source: source.map(|t| t.value),
             locus,
             obtained: obtained?,
-            parents,
+            parents: parents.into_iter().map(|t| t.value).collect(),
             rule,
             status,
             why,
-            disagrees_with,
+            disagrees_with: disagrees_with.into_iter().map(|t| t.value).collect(),
             note,
             spread_from,
             conditions,
             from_user: self.from_user,
             place: r.place().clone(),
+            fields,
         })
     }
 

@@ -132,6 +132,21 @@ pub struct Common {
     pub from_user: bool,
     /// Where it stands.
     pub place: Place,
+    /// Where single fields stand, for faults that only a whole set of records shows.
+    pub fields: FieldPlaces,
+}
+
+/// Places of single fields of a record.
+#[derive(Clone, PartialEq, Debug, Default)]
+pub struct FieldPlaces {
+    /// `id`.
+    pub id: Option<Place>,
+    /// `source`.
+    pub source: Option<Place>,
+    /// `obtained`.
+    pub obtained: Option<Place>,
+    /// `disagrees_with` and `parents`, each id with its place.
+    pub links: Vec<(String, Place)>,
 }
 
 /// A value of one property.
@@ -339,6 +354,8 @@ pub struct InterfaceEntry {
     pub barrier: Option<String>,
     /// Channel, by id; none where the counter electrode is a superconductor or another ferromagnet.
     pub channel: Option<String>,
+    /// Where ferromagnet, barrier and channel are named, in this order.
+    pub places: Vec<(String, Place)>,
     /// Contacts.
     pub contacts: Vec<ContactRecord>,
     /// Calibrations.

@@ -13,6 +13,7 @@ use crate::quantities::text::Reading;
 
 use super::full::{keep_whole, table, table_lines};
 use super::lines::{marked, wrap};
+use super::numbers::temperature;
 
 /// The list of materials and interfaces.
 #[must_use]
@@ -27,7 +28,7 @@ pub fn list(all: &[Listed], width: usize) -> Vec<String> {
 }
 
 fn reading(r: &Reading, scale: Scale) -> String {
-    let text = with_spread(r.si, &r.spread, scale);
+    let text = with_spread(r.si, &r.spread, scale).replace(' ', "\u{a0}");
     if matches!(r.spread, Spread::Unknown) { format!("{text}, spread not stated") } else { text }
 }
 
@@ -94,7 +95,7 @@ fn at(c: &Common) -> String {
             TemperatureFrom::Recalled => " (recalled)",
             TemperatureFrom::Assumed => " (assumed)",
         };
-        parts.push(format!("{}{known}", with_digits(t, Scale::Temperature, 4)));
+        parts.push(format!("{}{known}", temperature(t).replace('\u{a0}', " ")));
     }
     let conditions = &c.conditions;
     parts.extend(conditions.form.clone());
@@ -105,46 +106,50 @@ fn at(c: &Common) -> String {
     parts.join(", ")
 }
 
-fn pairs(m: &[PairRecord], sources: &mut Sources<'_>, width: usize) -> Vec<String> {
-    if m.is_empty() {
-        return Vec::new();
-    }
-    let mut lines = vec![String::new(), "Pairs: ρ, β and λ from one technique".to_owned()];
-    let mut t = table(&["record", "ρ", "β", "λ", "at", "how"], width, &[]);
-    for p in m {
-        let mut how = format!("{}; {}", p.common.technique.clone().unwrap_or_default(), sources.how(&p.common));
-        if p.resistivity_assumed {
-            how.push_str("; ρ not from the same paper");
-        }
-        t.add_row(vec![
-            p.common.id.clone(),
-            reading(&p.resistivity, Scale::Resistivity),
-            reading(&p.bulk_asymmetry, Scale::Plain),
-            reading(&p.spin_diffusion_length, Scale::Length),
-            at(&p.common),
-            how,
-        ]);
-    }
-    lines.extend(table_lines(&t));
+/// One record: what it says on one line, how it was obtained below it.
+fn entry(c: &Common, what: &str, how: &str, width: usize) -> Vec<String> {
+    let at = at(c);
+    let at = if at.is_empty() { String::new() } else { format!(" at {at}") };
+    let mut lines = marked(&c.id, &format!("{what}{at}"), width);
+    lines.extend(marked("   ", how, width));
     lines
 }
 
+fn section(title: &str, lines: Vec<String>) -> Vec<String> {
+    if lines.is_empty() {
+        return lines;
+    }
+    [String::new(), title.to_owned()].into_iter().chain(lines).collect()
+}
+
+fn pairs(m: &[PairRecord], sources: &mut Sources<'_>, width: usize) -> Vec<String> {
+    let mut lines = Vec::new();
+    for p in m {
+        let what = format!(
+            "ρ {}, β {}, λ {}",
+            reading(&p.resistivity, Scale::Resistivity),
+            reading(&p.bulk_asymmetry, Scale::Plain),
+            reading(&p.spin_diffusion_length, Scale::Length)
+        );
+        let assumed = if p.resistivity_assumed { "; ρ not from the same paper" } else { "" };
+        let how = format!(
+            "{}; {}{assumed}",
+            p.common.technique.clone().unwrap_or_default(),
+            sources.how(&p.common)
+        );
+        lines.extend(entry(&p.common, &what, &how, width));
+    }
+    section("Pairs: ρ, β and λ from one technique", lines)
+}
+
 fn values(m: &[ValueRecord], sources: &mut Sources<'_>, width: usize) -> Vec<String> {
-    if m.is_empty() {
-        return Vec::new();
-    }
-    let mut lines = vec![String::new(), "Values".to_owned()];
-    let mut t = table(&["record", "value", "at", "how"], width, &[]);
+    let mut lines = Vec::new();
     for v in m {
-        t.add_row(vec![
-            v.common.id.clone(),
-            reading(&v.reading, v.property.kind.scale),
-            at(&v.common),
-            sources.how(&v.common),
-        ]);
+        let what = reading(&v.reading, v.property.kind.scale);
+        let how = sources.how(&v.common);
+        lines.extend(entry(&v.common, &what, &how, width));
     }
-    lines.extend(table_lines(&t));
-    lines
+    section("Values", lines)
 }
 
 fn laws(m: &[LawRecord], sources: &mut Sources<'_>, width: usize) -> Vec<String> {
@@ -166,11 +171,7 @@ fn laws(m: &[LawRecord], sources: &mut Sources<'_>, width: usize) -> Vec<String>
 }
 
 fn contacts(m: &[ContactRecord], sources: &mut Sources<'_>, width: usize) -> Vec<String> {
-    if m.is_empty() {
-        return Vec::new();
-    }
-    let mut lines = vec![String::new(), "Contacts".to_owned()];
-    let mut t = table(&["record", "kind", "numbers", "at", "how"], width, &[]);
+    let mut lines = Vec::new();
     for c in m {
         let numbers: Vec<String> = [
             ("γ", &c.interface_asymmetry, Scale::Plain),
@@ -180,18 +181,13 @@ fn contacts(m: &[ContactRecord], sources: &mut Sources<'_>, width: usize) -> Vec
             ("δ", &c.spin_memory_loss, Scale::Plain),
         ]
         .into_iter()
-        .filter_map(|(name, r, scale)| r.as_ref().map(|r| format!("{name} = {}", reading(r, scale))))
+        .filter_map(|(name, r, scale)| r.as_ref().map(|r| format!("{name} {}", reading(r, scale))))
         .collect();
-        t.add_row(vec![
-            c.common.id.clone(),
-            c.kind.word().to_owned(),
-            numbers.join("; "),
-            at(&c.common),
-            sources.how(&c.common),
-        ]);
+        let what = format!("{}, {}", c.kind.word(), numbers.join(", "));
+        let how = sources.how(&c.common);
+        lines.extend(entry(&c.common, &what, &how, width));
     }
-    lines.extend(table_lines(&t));
-    lines
+    section("Contacts", lines)
 }
 
 fn notes(m: &[NoteRecord], sources: &mut Sources<'_>, width: usize) -> Vec<String> {

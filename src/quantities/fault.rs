@@ -120,7 +120,7 @@ impl ReadFault {
             }
             ReadFaultKind::OutOfRange { value, kind } => {
                 format!(
-                    "{} {value} is out of range: {}",
+                    "{value} is out of range for the {}: {}",
                     kind.name, kind.range.reason
                 )
             }
@@ -145,7 +145,15 @@ impl ReadFault {
                 Some(format!("{hint}{}", examples(expected)))
             }
             ReadFaultKind::UnitMissing { kind } => Some(examples(kind)),
-            ReadFaultKind::OutOfRange { kind, .. } => Some(limits(kind)),
+            ReadFaultKind::OutOfRange { value, kind } => {
+                // "10" for a ratio is nearly always meant in per cent.
+                let in_percent = value.parse::<f64>().is_ok_and(|x| kind.percent && kind.range.holds(x / 100.0));
+                Some(if in_percent {
+                    format!("did you mean {value} %? {}", limits(kind))
+                } else {
+                    limits(kind)
+                })
+            }
             ReadFaultKind::Unit(UnitFault::Unknown {
                 nearest: Some(near),
                 ..

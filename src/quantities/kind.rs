@@ -285,7 +285,7 @@ pub const TEMPERATURE: Kind = Kind {
         "temperature",
         <ThermodynamicTemperature as Measured>::DIMENSION,
         &["300 K", "25 °C"],
-        span(Excluding(0.0), Including(2000.0), "an absolute temperature is above 0 K; 2000 K is beyond any of the models"),
+        span(Including(1e-3), Including(2000.0), "the models hold between a millikelvin and 2000 K"),
         Scale::Temperature,
     )
 };

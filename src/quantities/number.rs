@@ -220,7 +220,9 @@ fn raised(text: &str, pos: usize) -> Option<(i32, usize)> {
 
 fn no_number(text: &str, at: usize) -> ReadFault {
     let rest = &text[at..];
-    let here = at..at + rest.chars().next().map_or(0, char::len_utf8);
+    // A word is underlined as a whole, anything else by its first character.
+    let word = rest.len() - rest.trim_start_matches(char::is_alphanumeric).len();
+    let here = at..at + word.max(rest.chars().next().map_or(0, char::len_utf8));
     let lower = rest.trim_start_matches(['+', '-', '−']).to_lowercase();
     let reason = if lower.starts_with("nan") || lower.starts_with("inf") || lower.starts_with('∞')
     {

@@ -348,10 +348,10 @@ fn a_value_is_refused_with_its_reason() {
         ("300 k", kind::TEMPERATURE, "\"k\" is not a known unit; did you mean K?"),
         ("25 C", kind::TEMPERATURE, "expected temperature, found electric charge"),
         ("5 m^4/s", t, "expected thickness, found a quantity in m⁴ s⁻¹"),
-        ("-3 nm", t, "thickness -3 nm is out of range: a layer's thickness is positive, at most 10 cm"),
-        ("1 .. 200 mm", t, "thickness 200 mm is out of range: a layer's thickness is positive, at most 10 cm"),
-        ("> 101 %", kind::SPIN_POLARIZATION, "spin polarization 101 % is out of range: a polarization lies between −100 % and 100 %"),
-        ("1", kind::BULK_ASYMMETRY, "bulk asymmetry 1 is out of range: an asymmetry lies between −1 and 1, both excluded: at ±1 one spin channel would not conduct at all"),
+        ("-3 nm", t, "-3 nm is out of range for the thickness: a layer's thickness is positive, at most 10 cm"),
+        ("1 .. 200 mm", t, "200 mm is out of range for the thickness: a layer's thickness is positive, at most 10 cm"),
+        ("> 101 %", kind::SPIN_POLARIZATION, "101 % is out of range for the spin polarization: a polarization lies between −100 % and 100 %"),
+        ("1", kind::BULK_ASYMMETRY, "1 is out of range for the bulk asymmetry: an asymmetry lies between −1 and 1, both excluded: at ±1 one spin channel would not conduct at all"),
         ("5 Oe", kind::MAGNETIZATION, "\"Oe\" is not accepted here: Oe and G are for a field applied in vacuum, not for saturation magnetization; write SI units"),
         ("1,5 nm", t, "the number is not accepted: it has a comma; write the decimal point as in 1.5, and no marks between thousands"),
         ("1 000 nm", t, "the number is not accepted: write the digits without spaces between them, for example 1000"),
@@ -479,7 +479,7 @@ fn an_interval_keeps_its_numbers_as_typed() {
         ),
         (
             "0 .. 1 nm",
-            "thickness 0 nm is out of range: a layer's thickness is positive, at most 10 cm",
+            "0 nm is out of range for the thickness: a layer's thickness is positive, at most 10 cm",
         ),
         ("1 .. 2", "the unit is missing: expected thickness"),
     ] {
