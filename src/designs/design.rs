@@ -200,7 +200,7 @@ fn contact_side(
 ) -> (Option<LayerSpec>, Option<ContactSpec>) {
     let ferromagnet = side
         .node("ferromagnet")
-        .map(|n| read_layer(n, &format!("{path}.ferromagnet"), Role::ContactFerromagnet, faults));
+        .map(|n| read_layer(n, &format!("{path}.ferromagnet"), Role::ContactFerromagnet, library, faults));
     if !side.has("ferromagnet") {
         side.missing("ferromagnet", "for example `ferromagnet = { material = \"iron\", thickness = \"15 nm\" }`");
     }
@@ -231,7 +231,7 @@ fn short_form(top: &Reader<'_>, library: &Library, faults: &Faults) -> Option<Fo
         return None;
     };
     let (injecting, first) = contact_side(&injector, "injector", library, faults);
-    let channel = top.node("channel").map(|n| read_layer(n, "channel", Role::Channel, faults));
+    let channel = top.node("channel").map(|n| read_layer(n, "channel", Role::Channel, library, faults));
     if channel.is_none() {
         top.missing("channel", "the layer that is injected into: `[channel]` with `material` or explicit numbers");
     }
@@ -362,8 +362,8 @@ fn long_form(top: &Reader<'_>, library: &Library, faults: &Faults) -> Option<For
         let Some(node) = entry.node(only) else { continue };
         let inner = format!("{path}.{only}");
         parts.push(match *only {
-            "ferromagnet" => Part::Ferromagnet(read_layer(node, &inner, Role::StackFerromagnet, faults)),
-            "normal" => Part::Normal(read_layer(node, &inner, Role::StackNormal, faults)),
+            "ferromagnet" => Part::Ferromagnet(read_layer(node, &inner, Role::StackFerromagnet, library, faults)),
+            "normal" => Part::Normal(read_layer(node, &inner, Role::StackNormal, library, faults)),
             kind => Part::Contact(read_contact(node, &inner, kind == "barrier", true, library, faults)),
         });
     }

@@ -149,7 +149,7 @@ pub fn read_goals(node: &Node, faults: &Faults) -> Vec<Goal> {
             goals.push(Goal {
                 target: *target,
                 comparison,
-                state,
+                state: if *target == Target::InjectedPolarization { state } else { GoalState::Parallel },
                 text: text.clone(),
                 place: node.place.clone(),
             });

@@ -1,9 +1,10 @@
 //! Layers and contacts of a design, as written.
 
-use crate::documents::fault::{Place, Wrong};
+use crate::documents::fault::{Fault, Place, Wrong, nearest};
 use crate::documents::reader::{Faults, Placed, Reader};
 use crate::documents::tree::Node;
-use crate::materials::library::Library;
+use crate::materials::library::{Library, Listed};
+use crate::materials::record::Class;
 use crate::quantities::kind;
 use crate::quantities::text::Reading;
 use crate::quantities::unit::Context;
@@ -143,12 +144,65 @@ fn overriding(place: &Place) -> bool {
     !place.source.name.starts_with("--")
 }
 
+/// The id of the library material that a name means, of one of the classes that may stand there. What is
+/// wrong with the name is reported.
+pub fn known_material(
+    library: &Library,
+    name: &Placed<String>,
+    path: &str,
+    allowed: &[Class],
+    faults: &Faults,
+) -> Option<String> {
+    let listed = library.listed();
+    let fits = |l: &&Listed| allowed.iter().any(|c| c.word() == l.class);
+    let wrong = match library.id_of(&name.value) {
+        Some(id) => {
+            let found = listed.iter().find(|l| l.id == id)?;
+            if fits(&found) {
+                return Some(id);
+            }
+            let wanted: Vec<&str> = allowed.iter().map(|c| c.word()).collect();
+            Wrong::Conflict {
+                reason: format!("{id} is a {}, not a {}", found.class, wanted.join(" or ")),
+                help: Some(format!("this place takes a {}", wanted.join(" or a "))),
+            }
+        }
+        None => {
+            let words: Vec<&str> = listed
+                .iter()
+                .filter(fits)
+                .flat_map(|l| std::iter::once(l.id.as_str()).chain(l.aliases.iter().map(String::as_str)))
+                .collect();
+            Wrong::UnknownWord {
+                what: "material",
+                found: name.value.clone(),
+                nearest: nearest(&name.value, words),
+                allowed: listed.iter().filter(fits).map(|l| l.id.clone()).collect(),
+            }
+        }
+    };
+    faults.push(Fault { place: Some(name.place.clone()), field: format!("{path}.material"), wrong });
+    None
+}
+
+/// Classes of material that a layer may be of.
+#[must_use]
+pub fn classes_of(role: Role) -> &'static [Class] {
+    match role {
+        Role::ContactFerromagnet | Role::StackFerromagnet => &[Class::Ferromagnet],
+        Role::Channel | Role::StackNormal => &[Class::Semiconductor, Class::Metal],
+    }
+}
+
 /// Reads a layer.
-pub fn read_layer(node: &Node, path: &str, role: Role, faults: &Faults) -> LayerSpec {
+pub fn read_layer(node: &Node, path: &str, role: Role, library: &Library, faults: &Faults) -> LayerSpec {
     let r = Reader::new(node, path, faults);
     let plain = Context::default();
     let ferromagnet = matches!(role, Role::ContactFerromagnet | Role::StackFerromagnet);
     let material = r.text("material");
+    if let Some(name) = &material {
+        known_material(library, name, path, classes_of(role), faults);
+    }
     let resistivity = r.quantity("resistivity", &kind::RESISTIVITY, &plain);
     let conductivity = r.quantity("conductivity", &kind::CONDUCTIVITY, &plain);
     let bulk_asymmetry =
@@ -260,6 +314,9 @@ pub fn read_contact(
     let r = Reader::new(node, path, faults);
     let plain = Context::default();
     let material = if is_barrier { r.text("material") } else { None };
+    if let Some(name) = &material {
+        known_material(library, name, path, &[Class::Barrier], faults);
+    }
     let resistance_area = r.quantity("resistance_area", &kind::RESISTANCE_AREA, &plain);
     let interface_spin_resistance =
         r.quantity("interface_spin_resistance", &kind::INTERFACE_SPIN_RESISTANCE, &plain);

@@ -94,20 +94,22 @@ impl InputTable {
         matrix
     }
 
-    /// The central row with one input moved by `sigmas` standard deviations along its distribution; `None`
-    /// where it has no spread or the moved value leaves the range of its kind.
+    /// The central row with some inputs moved by `sigmas` standard deviations along their distributions;
+    /// `None` where one has no spread or its moved value leaves the range of its kind.
     #[must_use]
-    pub fn moved(&self, column: usize, sigmas: f64) -> Option<Array1<f64>> {
-        let input = self.inputs.get(column)?;
-        if matches!(input.reading.spread, Spread::Exact | Spread::Unknown | Spread::Bound { .. }) {
-            return None;
-        }
-        let value = input.reading.spread.shifted(input.reading.si, sigmas);
-        if !input.kind.range.holds(value) {
-            return None;
-        }
+    pub fn moved(&self, columns: &[usize], sigmas: f64) -> Option<Array1<f64>> {
         let mut row = self.central();
-        row[column] = value;
+        for column in columns {
+            let input = self.inputs.get(*column)?;
+            if matches!(input.reading.spread, Spread::Exact | Spread::Unknown | Spread::Bound { .. }) {
+                return None;
+            }
+            let value = input.reading.spread.shifted(input.reading.si, sigmas);
+            if !input.kind.range.holds(value) {
+                return None;
+            }
+            row[*column] = value;
+        }
         Some(row)
     }
 }

@@ -62,7 +62,8 @@ impl Provenance {
             matches!(
                 m,
                 Mark::Borrowed { .. }
-                    | Mark::OtherBarrier { .. }
+                    | Mark::LengthNotScaled
+                    | Mark::MixedTechniques
                     | Mark::PriorSpread { .. }
                     | Mark::NoSpread
                     | Mark::BoundOnly

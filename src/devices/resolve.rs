@@ -3,18 +3,21 @@
 use std::rc::Rc;
 
 use crate::designs::design::{Design, Part};
-use crate::designs::layers::{ContactSpec, EndWord, LayerSpec, MagnetizationWord, Side};
-use crate::documents::fault::{Fault, Place, Wrong, nearest};
+use crate::designs::layers::{
+    ContactSpec, EndWord, LayerSpec, MagnetizationWord, Side, known_material,
+};
+use crate::documents::fault::{Fault, Place, Wrong};
 use crate::documents::reader::{Faults, Placed};
 use crate::materials::choose::{
     self, Chosen, ContactNumber, ContactValue, Mark, NotChosen, Wanted, with_prior,
 };
 use crate::materials::library::Library;
-use crate::materials::record::{Class, Common, Material};
+use crate::materials::record::{Class, Common, Material, PairRecord};
 use crate::models::ladder::Magnetization;
-use crate::quantities::dimensions::Measured;
+use crate::quantities::dimensions::{Measured, ResistanceTimesArea};
 use crate::quantities::kind::{self, Kind, Scale};
 use crate::quantities::print::with_digits;
+use crate::quantities::spread::Spread;
 use crate::quantities::text::Reading;
 
 use super::inputs::{Input, InputTable, Slot};
@@ -23,6 +26,10 @@ use super::vertical::{
     ElementPlan, EndPlan, InterfacePlan, InterfaceResistancePlan, LayerPlan, LengthPlan,
     LikelyContact, Named, Position, ResistivityPlan, Vertical,
 };
+
+/// Least relative spread of a product ρλ joined with a β of another technique: lengths measured in stacks and
+/// in lateral valves differ by about as much.
+const LEAST_PRODUCT_SPREAD: f64 = 0.3;
 
 /// Builds the device of a design. Faults are collected; `None` where it could not be built.
 pub fn resolve(design: &Design, library: &Library, faults: &Faults) -> Option<Vertical> {
@@ -137,46 +144,8 @@ impl Work<'_> {
         path: &str,
         allowed: &[Class],
     ) -> Option<Rc<Material>> {
-        let field = format!("{path}.material");
-        let listed = self.library.listed();
-        let Some(id) = self.library.id_of(&name.value) else {
-            let words: Vec<&str> = listed
-                .iter()
-                .filter(|l| allowed.iter().any(|c| c.word() == l.class))
-                .flat_map(|l| std::iter::once(l.id.as_str()).chain(l.aliases.iter().map(String::as_str)))
-                .collect();
-            self.fault(
-                &name.place,
-                field,
-                Wrong::UnknownWord {
-                    what: "material",
-                    found: name.value.clone(),
-                    nearest: nearest(&name.value, words),
-                    allowed: listed
-                        .iter()
-                        .filter(|l| allowed.iter().any(|c| c.word() == l.class))
-                        .map(|l| l.id.clone())
-                        .collect(),
-                },
-            );
-            return None;
-        };
-        let material = self.library.material(&id, self.faults);
-        if let Some(m) = &material
-            && !allowed.contains(&m.class)
-        {
-            let wanted: Vec<&str> = allowed.iter().map(|c| c.word()).collect();
-            self.fault(
-                &name.place,
-                field,
-                Wrong::Conflict {
-                    reason: format!("{} is a {}, not a {}", m.id, m.class.word(), wanted.join(" or ")),
-                    help: Some(format!("this place takes a {}", wanted.join(" or a "))),
-                },
-            );
-            return None;
-        }
-        material
+        let id = known_material(self.library, name, path, allowed, self.faults)?;
+        self.library.material(&id, self.faults)
     }
 
     fn not_in_library(&self, spec_place: &Place, path: &str, key: &str, what: String, exists: Vec<String>, example: &str) {
@@ -471,33 +440,70 @@ impl Work<'_> {
         if let Some(length) = length {
             return Some((rho, beta, length));
         }
-        // The user's own resistivity gives λ where the product ρλ of the material is known.
-        if overridden && let Ok(product) = choose::value(material, "resistivity_length_product", &wanted) {
-            let (reading, mark) = with_prior(
-                self.library,
-                "resistivity_length_product",
-                &kind::RHO_LAMBDA,
-                &product.record.reading,
-            );
-            let mut marks = product.marks;
-            marks.extend(mark);
-            let provenance = Provenance {
-                origin: origin_of(&product.record.common, product.decided, product.among),
-                marks,
-            };
-            let name = format!("{path}.resistivity_length_product");
-            let slot = self.add(name, &kind::RHO_LAMBDA, reading, provenance);
+        if overridden && let Some(slot) = self.product(material, &record, path, &origin, &marks, &wanted) {
             return Some((rho, beta, LengthPlan::FromProduct(slot)));
         }
-        let (name, reading, provenance) = column(
+        let (name, reading, mut provenance) = column(
             self,
             "spin_diffusion_length",
             &kind::SPIN_DIFFUSION_LENGTH,
             &record.spin_diffusion_length,
             Some(&assumed),
         );
+        if overridden {
+            provenance.marks.push(Mark::LengthNotScaled);
+        }
         let slot = self.add(name, &kind::SPIN_DIFFUSION_LENGTH, reading, provenance);
         Some((rho, beta, LengthPlan::Direct(slot)))
+    }
+
+    /// The product ρλ that gives λ for the user's own resistivity: the pair's own where both come from one
+    /// paper, else the material's product record, marked as of another technique and with at least
+    /// [`LEAST_PRODUCT_SPREAD`]; none where neither is known.
+    fn product(
+        &mut self,
+        material: &Material,
+        record: &PairRecord,
+        path: &str,
+        origin: &Origin,
+        marks: &[Mark],
+        wanted: &Wanted,
+    ) -> Option<Slot<ResistanceTimesArea>> {
+        let key = "resistivity_length_product";
+        let name = format!("{path}.{key}");
+        if !record.resistivity_assumed {
+            let (rho, lambda) = (&record.resistivity, &record.spin_diffusion_length);
+            let product = rho.si * lambda.si;
+            let relative = |r: &Reading| r.spread.standard_deviation(r.si).map(|sd| sd / r.si);
+            let spread = match (relative(rho), relative(lambda)) {
+                (Some(a), Some(b)) => Spread::Normal { sd: product * a.hypot(b) },
+                _ => Spread::Unknown,
+            };
+            let reading = Reading {
+                si: product,
+                spread,
+                unit_text: String::new(),
+                text: with_digits(product, Scale::ResistanceArea, 3),
+            };
+            let marks = marks.iter().cloned().chain([Mark::LengthScaled]).collect();
+            let provenance = Provenance { origin: origin.clone(), marks };
+            return Some(self.add(name, &kind::RHO_LAMBDA, reading, provenance));
+        }
+        let chosen = choose::value(material, key, wanted).ok()?;
+        let (mut reading, mark) =
+            with_prior(self.library, key, &kind::RHO_LAMBDA, &chosen.record.reading);
+        let least = LEAST_PRODUCT_SPREAD * reading.si;
+        if reading.spread.standard_deviation(reading.si).is_none_or(|sd| sd < least) {
+            reading.spread = Spread::Normal { sd: least };
+        }
+        let mut marks = chosen.marks;
+        marks.extend(mark);
+        marks.push(Mark::MixedTechniques);
+        let provenance = Provenance {
+            origin: origin_of(&chosen.record.common, chosen.decided, chosen.among),
+            marks,
+        };
+        Some(self.add(name, &kind::RHO_LAMBDA, reading, provenance))
     }
 
     fn contact_value<Q: Measured>(
@@ -532,8 +538,11 @@ impl Work<'_> {
         let magnetization = ferromagnet
             .and_then(|(p, _, _)| layer_spec(p))
             .map_or(Magnetization::Fixed, |l| magnetization(l.magnetization));
-        let both = ferromagnet.and_then(|(_, f, n)| Some((f.material.clone()?, n.material.clone()?, n.semiconductor)));
-        let wanted = self.wanted(None);
+        let both = ferromagnet
+            .and_then(|(_, f, n)| Some((f.material.clone()?, n.material.clone()?, n.semiconductor)));
+        // A contact record belongs to a channel of a type and doping: those of the normal neighbour.
+        let normal = [left, right].into_iter().find(|p| matches!(p, Part::Normal(_)));
+        let wanted = self.wanted(normal.and_then(layer_spec));
         let mut plan = InterfacePlan {
             resistance: InterfaceResistancePlan::Zero,
             asymmetry: None,
@@ -613,19 +622,19 @@ impl Work<'_> {
         let resistance = find(ContactNumber::SpinResistance);
         let asymmetry = find(ContactNumber::Asymmetry);
         let loss = find(ContactNumber::MemoryLoss);
-        if let (Some(resistance), Some(asymmetry)) = (resistance, asymmetry) {
-            plan.resistance = InterfaceResistancePlan::SpinResistance(self.contact_value(
-                path,
-                ContactNumber::SpinResistance,
-                resistance,
-            ));
-            if asymmetry_wanted {
-                plan.asymmetry = Some(self.contact_value(path, ContactNumber::Asymmetry, asymmetry));
-            }
-            plan.memory_loss = loss
-                .filter(|_| loss_wanted)
-                .map(|loss| self.contact_value(path, ContactNumber::MemoryLoss, loss));
+        // Nothing stated: only a whole contact is taken. Stated in part: the resistance alone is of use.
+        let Some(resistance) = resistance.filter(|_| asymmetry.is_some() || !asymmetry_wanted) else { return };
+        plan.resistance = InterfaceResistancePlan::SpinResistance(self.contact_value(
+            path,
+            ContactNumber::SpinResistance,
+            resistance,
+        ));
+        if let Some(asymmetry) = asymmetry.filter(|_| asymmetry_wanted) {
+            plan.asymmetry = Some(self.contact_value(path, ContactNumber::Asymmetry, asymmetry));
         }
+        plan.memory_loss = loss
+            .filter(|_| loss_wanted)
+            .map(|loss| self.contact_value(path, ContactNumber::MemoryLoss, loss));
     }
 
     fn asymmetry_of(
@@ -767,8 +776,12 @@ impl Work<'_> {
                 .find(|(_, a, b)| (*a, *b) == (other, design.channel) || (*b, *a) == (other, design.channel))
                 .map(|(element, _, _)| *element)
         };
-        let channel_contacts: Vec<usize> =
-            [before, after].into_iter().flatten().filter_map(touching).collect();
+        let contacts_of_channel: Vec<(usize, usize)> = [before, after]
+            .into_iter()
+            .flatten()
+            .filter_map(|magnet| touching(magnet).map(|element| (element, magnet)))
+            .collect();
+        let channel_contacts = contacts_of_channel.iter().map(|(element, _)| *element).collect();
         let injector_contact = touching(injector_part);
         let flips = |f: Magnetization| f == Magnetization::Free;
         let magnetizations: Vec<Magnetization> = parts
@@ -780,7 +793,10 @@ impl Work<'_> {
             .collect();
         let has_two_states =
             magnetizations.iter().any(|m| flips(*m)) && magnetizations.iter().any(|m| !flips(*m));
-        let likely = self.likely(injector_contact.and_then(|i| elements.get(i)), injector_part);
+        let likely = contacts_of_channel
+            .iter()
+            .filter_map(|(element, magnet)| self.likely(*element, elements.get(*element), *magnet))
+            .collect();
         Some(Vertical {
             table: std::mem::take(&mut self.table),
             left,
@@ -799,28 +815,33 @@ impl Work<'_> {
         })
     }
 
-    /// γ that a barrier might have at an injector without one.
-    fn likely(&self, contact: Option<&ElementPlan>, injector: usize) -> Option<LikelyContact> {
-        let Some(ElementPlan::Interface(InterfacePlan { asymmetry: None, .. })) = contact else { return None };
+    /// γ that a barrier might have at a contact without one.
+    fn likely(&self, element: usize, contact: Option<&ElementPlan>, magnet: usize) -> Option<LikelyContact> {
+        let Some(ElementPlan::Interface(InterfacePlan { asymmetry: None, .. })) = contact else {
+            return None;
+        };
+        let channel = self.design.parts.get(self.design.channel)?;
         let id = |part: &Part| {
             let name = &layer_spec(part)?.material.as_ref()?.value;
             self.library.id_of(name)
         };
-        let f = id(self.design.parts.get(injector)?)?;
-        let n = id(self.design.parts.get(self.design.channel)?)?;
-        let value = choose::likely_asymmetry(self.library, &f, &n, &self.wanted(None), self.faults)?;
+        let f = id(self.design.parts.get(magnet)?)?;
+        let n = id(channel)?;
+        let wanted = self.wanted(layer_spec(channel));
+        let value = choose::likely_asymmetry(self.library, &f, &n, &wanted, self.faults)?;
         let ContactValue { reading, chosen, interface, barrier } = value;
         let provenance = Provenance {
             origin: origin_of(&chosen.record.common, chosen.decided, chosen.among),
             marks: chosen.marks,
         };
+        let side = if magnet < self.design.channel { "injector" } else { "detector" };
         let input = Input {
-            name: "injector.barrier.interface_asymmetry".to_owned(),
+            name: format!("{side}.barrier.interface_asymmetry"),
             kind: &kind::INTERFACE_ASYMMETRY,
             reading,
             provenance,
         };
-        Some(LikelyContact { input, barrier, interface })
+        Some(LikelyContact { element, input, barrier, interface })
     }
 }
 

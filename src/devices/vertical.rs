@@ -112,6 +112,8 @@ pub struct Named {
 /// γ that a barrier might have where the design has none.
 #[derive(Clone, Debug)]
 pub struct LikelyContact {
+    /// Element of the contact.
+    pub element: usize,
     /// The input, not part of the table: the present stack does not depend on it.
     pub input: super::inputs::Input,
     /// Barrier it is known for.
@@ -145,8 +147,8 @@ pub struct Vertical {
     pub channel_contacts: Vec<usize>,
     /// Whether two magnetic states differ: something flips and something does not.
     pub has_two_states: bool,
-    /// γ for a barrier that is not there.
-    pub likely: Option<LikelyContact>,
+    /// γ for barriers that are not there, one a bare contact.
+    pub likely: Vec<LikelyContact>,
     /// Temperature.
     pub temperature: ThermodynamicTemperature,
     /// Current density.

@@ -8,6 +8,7 @@
 use std::cmp::Ordering;
 
 use crate::documents::reader::Faults;
+use crate::quantities::dimensions::Dimension;
 use crate::quantities::kind::{self, Kind};
 use crate::quantities::spread::Spread;
 use crate::quantities::text::{Reading, read};
@@ -18,7 +19,7 @@ use super::record::{
     Common, ContactKind, ContactRecord, Material, Obtained, PairRecord, Status, ValueRecord,
 };
 
-/// Fraction by which a record's temperature may differ from the design's without a mark.
+/// Fraction of a record's temperature by which the design's may differ without a mark.
 pub const TEMPERATURE_REACH: f64 = 0.10;
 /// Factor by which a record's doping may differ from the design's without a mark.
 pub const DOPING_REACH: f64 = 2.0;
@@ -75,7 +76,7 @@ pub enum Mark {
         /// Doping of the design, m⁻³.
         wanted: f64,
     },
-    /// The record is of another dopant, or does not say which.
+    /// The record is of another dopant.
     OtherDopant {
         /// Dopant of the record.
         record: String,
@@ -96,11 +97,12 @@ pub enum Mark {
         /// Tunnel polarization of the record.
         polarization: f64,
     },
-    /// The contact record belongs to another barrier.
-    OtherBarrier {
-        /// Barrier of the record.
-        barrier: String,
-    },
+    /// λ of a pair is scaled with the user's resistivity, its product ρλ held.
+    LengthScaled,
+    /// λ of a pair stands although the resistivity is the user's: the pair's own is not from the same paper.
+    LengthNotScaled,
+    /// β comes from one technique and ρλ from another; at least 30 % is carried on the product.
+    MixedTechniques,
     /// The resistivity of the pair is not from the same paper.
     ResistivityAssumed,
     /// The record disagrees with others.
@@ -166,7 +168,7 @@ struct Rank {
 
 fn rank(common: &Common, bound: bool, wanted: &Wanted, order: usize) -> Rank {
     let fine_temperature =
-        common.temperature.map_or(0.0, |t| (t - wanted.temperature).abs() / wanted.temperature);
+        common.temperature.map_or(0.0, |t| (t - wanted.temperature).abs() / t);
     let fine_doping = match (&common.conditions.doping, wanted.doping) {
         (Some(r), Some(w)) => (r.si / w).ln().abs(),
         (None, Some(_)) => 20.0,
@@ -217,7 +219,7 @@ fn marks_of(common: &Common, wanted: &Wanted) -> Vec<Mark> {
         Obtained::Read | Obtained::MeasuredHere => {}
     }
     if let Some(t) = common.temperature {
-        if (t - wanted.temperature).abs() > TEMPERATURE_REACH * wanted.temperature * (1.0 + 1e-12) {
+        if (t - wanted.temperature).abs() > TEMPERATURE_REACH * t * (1.0 + 1e-12) {
             marks.push(Mark::OtherTemperature { record: t, wanted: wanted.temperature });
         }
         if common.temperature_from != super::record::TemperatureFrom::Stated {
@@ -281,7 +283,10 @@ pub fn with_prior(
         return (reading.clone(), None);
     }
     let spread = library.prior(property).and_then(|prior| {
-        let text = format!("{} {}", reading.text, prior.spread);
+        // A pure number is written bare, so that `± 0.1` means the same beside 0.5 and beside 50 %.
+        let value =
+            if kind.dimension == Dimension::NONE { reading.si.to_string() } else { reading.text.clone() };
+        let text = format!("{value} {}", prior.spread);
         read(&text, kind, &Context::default()).ok().map(|r| (r, prior.spread.clone()))
     });
     match spread {
@@ -558,7 +563,6 @@ fn borrowed(
         unit_text: String::new(),
         text: format!("{low} .. {high}"),
     };
-    value.chosen.marks.retain(|m| !matches!(m, Mark::BoundOnly));
     value.chosen.marks.push(Mark::Borrowed { polarization: p });
     Some(value)
 }

@@ -9,7 +9,7 @@ use crate::documents::reader::Faults;
 use crate::documents::tree;
 
 use super::file::{Content, read_file};
-use super::record::{Class, Common, InterfaceEntry, Material, Prior};
+use super::record::{Common, InterfaceEntry, Material, Prior};
 use super::references::References;
 
 /// What a shipped file is, read off its head lines at build time.
@@ -75,6 +75,7 @@ pub struct Library {
     priors: Vec<Prior>,
     references: References,
     replaced: Vec<String>,
+    laid_over: Vec<String>,
     materials: RefCell<BTreeMap<String, Rc<Material>>>,
     interfaces: RefCell<BTreeMap<String, Rc<InterfaceEntry>>>,
 }
@@ -115,6 +116,7 @@ impl Library {
             priors,
             references: References::new(REFERENCES),
             replaced: Vec::new(),
+            laid_over: Vec::new(),
             materials: RefCell::default(),
             interfaces: RefCell::default(),
         }
@@ -129,6 +131,11 @@ impl Library {
     pub fn lay_over(&mut self, files: &[(String, String)], faults: &Faults) {
         for (name, text) in files {
             if name.ends_with(".bib") {
+                let own = References::new(text);
+                let known = |key: &&str| self.references.bibtex(key).is_some_and(|b| own.bibtex(key) != Some(b));
+                let other: Vec<String> =
+                    own.keys().filter(known).map(|k| format!("reference {k}")).collect();
+                self.laid_over.extend(other);
                 self.references.lay_over(text);
                 continue;
             }
@@ -136,6 +143,10 @@ impl Library {
                 Some(Content::Material(m)) => self.user_materials.push(*m),
                 Some(Content::Interface(i)) => self.user_interfaces.push(*i),
                 Some(Content::Priors(mut p)) => {
+                    let known = |q: &&Prior| self.priors.iter().any(|k| k.property == q.property);
+                    let other: Vec<String> =
+                        p.iter().filter(known).map(|q| format!("prior of {}", q.property)).collect();
+                    self.laid_over.extend(other);
                     p.append(&mut self.priors);
                     self.priors = p;
                 }
@@ -143,9 +154,10 @@ impl Library {
             }
         }
         self.refuse_doubles(faults);
+        self.refuse_other_heads(faults);
         self.materials.borrow_mut().clear();
         self.interfaces.borrow_mut().clear();
-        let mut replaced = Vec::new();
+        let mut replaced = self.laid_over.clone();
         let own: Vec<String> = self.user_materials.iter().map(|m| m.id.clone()).collect();
         for id in own {
             replaced.extend(self.material_with_replaced(&id, faults).map(|(_, r)| r).unwrap_or_default());
@@ -157,6 +169,89 @@ impl Library {
         replaced.sort();
         replaced.dedup();
         self.replaced = replaced;
+    }
+
+    /// A file laid over a shipped id has to be of the same material or contact, and a shipped record can only
+    /// be replaced where it stands.
+    fn refuse_other_heads(&self, faults: &Faults) {
+        let conflict = |common: Option<&&Common>, field: &str, reason: String| {
+            faults.push(Fault {
+                place: common.map(|c| c.place.clone()),
+                field: field.to_owned(),
+                wrong: Wrong::Conflict {
+                    reason,
+                    help: Some("give the file an id of its own, or make it agree with the shipped one".to_owned()),
+                },
+            });
+        };
+        for m in &self.user_materials {
+            let commons = commons_of_material(m);
+            for file in SHIPPED.iter().filter(|f| f.id == m.id) {
+                match file.role {
+                    Role::Material { class, .. } if class == m.class.word() => {}
+                    Role::Material { class, .. } => conflict(
+                        commons.first(),
+                        &m.id,
+                        format!("the shipped `{}` is a {class}, this file makes it a {}", m.id, m.class.word()),
+                    ),
+                    _ => conflict(commons.first(), &m.id, format!("`{}` is shipped as an interface", m.id)),
+                }
+            }
+        }
+        for i in &self.user_interfaces {
+            let commons = commons_of_interface(i);
+            for file in SHIPPED.iter().filter(|f| f.id == i.id) {
+                let same = matches!(file.role, Role::Interface { ferromagnet, barrier, channel }
+                    if ferromagnet == i.ferromagnet
+                        && barrier == i.barrier.as_deref()
+                        && channel == i.channel.as_deref());
+                if !same {
+                    conflict(
+                        commons.first(),
+                        &i.id,
+                        format!("the shipped `{}` is another contact than this file's", i.id),
+                    );
+                }
+            }
+        }
+        self.refuse_strayed_records(faults);
+    }
+
+    /// Records of the user whose id a shipped record of another file has.
+    fn refuse_strayed_records(&self, faults: &Faults) {
+        let quiet = Faults::default();
+        let mut homes: BTreeMap<String, &str> = BTreeMap::new();
+        for file in SHIPPED {
+            let ids: Vec<String> = match parse_shipped(file, &quiet) {
+                Some(Content::Material(m)) => commons_of_material(&m).iter().map(|c| c.id.clone()).collect(),
+                Some(Content::Interface(i)) => {
+                    commons_of_interface(&i).iter().map(|c| c.id.clone()).collect()
+                }
+                _ => continue,
+            };
+            homes.extend(ids.into_iter().map(|id| (id, file.id)));
+        }
+        let own = self
+            .user_materials
+            .iter()
+            .flat_map(|m| commons_of_material(m).into_iter().map(|c| (m.id.as_str(), c)))
+            .chain(self.user_interfaces.iter().flat_map(|i| {
+                commons_of_interface(i).into_iter().map(|c| (i.id.as_str(), c))
+            }));
+        for (home, common) in own {
+            if let Some(other) = homes.get(&common.id)
+                && *other != home
+            {
+                faults.push(Fault {
+                    place: Some(common.fields.id.clone().unwrap_or_else(|| common.place.clone())),
+                    field: common.id.clone(),
+                    wrong: Wrong::Conflict {
+                        reason: format!("the id `{}` belongs to a shipped record of `{other}`", common.id),
+                        help: Some("give each record an id of its own".to_owned()),
+                    },
+                });
+            }
+        }
     }
 
     fn refuse_doubles(&self, faults: &Faults) {
@@ -226,7 +321,11 @@ impl Library {
         }
         let mut add = |id: &str, name: &str, class: &str, aliases: &[String]| {
             all.entry(id.to_owned())
-                .and_modify(|l| l.from_user = true)
+                .and_modify(|l| {
+                    l.from_user = true;
+                    let new: Vec<String> = aliases.iter().filter(|a| !l.aliases.contains(a)).cloned().collect();
+                    l.aliases.extend(new);
+                })
                 .or_insert_with(|| Listed {
                     id: id.to_owned(),
                     name: name.to_owned(),
@@ -284,6 +383,7 @@ impl Library {
             merged = Some(match merged {
                 None => m,
                 Some(mut base) => {
+                    base.aliases.extend(m.aliases.into_iter().filter(|a| !base.aliases.contains(a)).collect::<Vec<_>>());
                     lay(&mut base.values, m.values, |r| &r.common, &mut replaced);
                     lay(&mut base.pairs, m.pairs, |r| &r.common, &mut replaced);
                     lay(&mut base.calibrations, m.calibrations, |r| &r.common, &mut replaced);
@@ -396,12 +496,6 @@ pub fn commons_of_interface(i: &InterfaceEntry) -> Vec<&Common> {
         .chain(i.values.iter().map(|r| &r.common))
         .chain(i.notes.iter().map(|r| &r.common))
         .collect()
-}
-
-/// The class that a word of the index means.
-#[must_use]
-pub fn class_of(word: &str) -> Option<Class> {
-    Class::WORDS.iter().find(|(w, _)| *w == word).map(|(_, c)| *c)
 }
 
 impl Library {

@@ -12,7 +12,7 @@ use crate::quantities::dimensions::Measured;
 use crate::quantities::kind::Scale;
 use crate::quantities::print::{with_digits, with_spread};
 use crate::quantities::spread::Spread;
-use crate::studies::assess::Assessment;
+use crate::studies::assess::{Assessment, channel_potentials};
 
 use super::lines::{labelled, marked, wrap};
 use super::numbers::{area, factor, percent, voltage};
@@ -317,8 +317,8 @@ fn place_name(a: &Assessment, face: usize) -> String {
 }
 
 fn potentials(a: &Assessment, width: usize) -> Vec<String> {
-    let (j, stated) = summary::current_density(a);
-    let none = if stated { "" } else { " (the design states none)" };
+    let j = a.told_at.si();
+    let none = if a.device.current_density.is_some() { "" } else { " (the design states none)" };
     let told = format!("{}{none}", plain(&summary::current_density_text(j)));
     let mut lines = Vec::new();
     let states: &[(&str, &[Face])] = if a.device.has_two_states {
@@ -332,13 +332,13 @@ fn potentials(a: &Assessment, width: usize) -> Vec<String> {
         let mut t = table(&["face", "p = J/j", "u = (V↑−V↓)/2", "V↑", "V↓"], width, &[1, 2, 3, 4]);
         for (k, f) in faces.iter().enumerate() {
             let u = f.accumulation_per_current_density.si() * j;
-            let v = f.potential_per_current_density.si() * j;
+            let [up, down] = channel_potentials(f);
             t.add_row(vec![
                 place_name(a, k),
                 percent(f.polarization.si()),
                 voltage(u),
-                whole(&with_digits(v + u, Scale::Voltage, 4)),
-                whole(&with_digits(v - u, Scale::Voltage, 4)),
+                whole(&with_digits(up.si() * j, Scale::Voltage, 4)),
+                whole(&with_digits(down.si() * j, Scale::Voltage, 4)),
             ]);
         }
         lines.extend(table_lines(&t));

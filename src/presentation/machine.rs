@@ -5,13 +5,14 @@
 use serde::Serialize;
 use serde_json::{Map, Value, json};
 
+use crate::designs::goals::Comparison;
 use crate::devices::provenance::Origin;
 use crate::devices::vertical::{EndPlan, Position};
 use crate::models::ladder::{Element, End, Face, Layer, Magnetization};
 use crate::quantities::dimensions::Measured;
 use crate::quantities::kind::Scale;
 use crate::quantities::spread::{Side, Spread};
-use crate::studies::assess::{Assessment, GoalResult};
+use crate::studies::assess::{Assessment, GoalResult, channel_potentials};
 use crate::studies::mismatch::HalfMetal;
 use crate::studies::vary::Varied;
 use crate::studies::window::{NoWindow, Window};
@@ -103,11 +104,21 @@ const AREA: &str = "Ω m²";
 #[must_use]
 pub fn assessment(a: &Assessment) -> Value {
     let from = records(a);
-    // The linear, thick-layer model is strained where one of these findings stands.
+    // A model or a record is outside its range where one of these findings stands.
     let strained = a.findings.iter().any(|f| {
         matches!(
             f.rule_name(),
-            "bare-semiconductor" | "thin-ferromagnet" | "not-linear" | "drift" | "asymmetry-near-one"
+            "bare-semiconductor"
+                | "thin-ferromagnet"
+                | "thin-channel"
+                | "not-linear"
+                | "drift"
+                | "high-bias"
+                | "asymmetry-near-one"
+                | "above-curie-temperature"
+                | "temperature-outside-data"
+                | "doping-outside-data"
+                | "memory-loss-outside-temperature"
         )
     });
     let n = |v: f64, unit: &'static str| number(v, unit, &from, strained);
@@ -124,6 +135,7 @@ pub fn assessment(a: &Assessment) -> Value {
     put("stack_sketch", json!(summary::sketch(a)));
     put("temperature", json!(number(a.device.temperature.si(), "K", &[], false)));
     put("current_density", json!(a.device.current_density.map(|j| number(j.si(), "A/m²", &[], false))));
+    put("voltages_told_at_current_density", json!(number(a.told_at.si(), "A/m²", &[], false)));
     put("injected_polarization", json!(n(o.polarization.si(), "1")));
     put("spin_accumulation_per_current_density", json!(n(o.accumulation.si(), AREA)));
     put(
@@ -146,6 +158,12 @@ pub fn assessment(a: &Assessment) -> Value {
     put(
         "default_window",
         a.default_window.as_ref().map_or(Value::Null, |w| window(a, w, &from)),
+    );
+    put(
+        "rule_of_thumb",
+        a.rule_of_thumb.map_or(Value::Null, |[low, high]| {
+            json!({ "low": n(low.si(), AREA), "high": n(high.si(), AREA) })
+        }),
     );
     put("without_barrier", a.default_half_metal.map_or(Value::Null, |h| half_metal(h, &from)));
     put(
@@ -230,9 +248,9 @@ fn under(a: &Assessment, at: Position) -> Vec<String> {
 }
 
 fn gamma_records(a: &Assessment, w: &Window) -> Vec<String> {
-    match (&a.device.likely, w.asymmetry_is_likely) {
-        (Some(likely), true) => likely.input.provenance.records(),
-        _ => under(a, Position::Element(w.contact)),
+    match a.device.likely.iter().find(|l| l.element == w.contact && w.asymmetry_is_likely) {
+        Some(likely) => likely.input.provenance.records(),
+        None => under(a, Position::Element(w.contact)),
     }
 }
 
@@ -242,11 +260,21 @@ fn goal(a: &Assessment, g: &GoalResult, from: &[String], strained: bool) -> Valu
         "result": g.goal.target.word(),
         "state": format!("{:?}", g.goal.state).to_lowercase(),
         "comparison": g.goal.text,
+        "threshold": threshold(&g.goal.comparison, unit),
         "value": number(g.value, unit, from, strained),
         "met": g.met,
         "window": window(a, &g.window, from),
         "without_barrier": half_metal(g.half_metal, from),
     })
+}
+
+fn threshold(c: &Comparison, unit: &'static str) -> Value {
+    let n = |x: f64| number(x, unit, &[], false);
+    match *c {
+        Comparison::AtLeast(a) => json!({ "at_least": n(a) }),
+        Comparison::AtMost(b) => json!({ "at_most": n(b) }),
+        Comparison::Between(a, b) => json!({ "at_least": n(a), "at_most": n(b) }),
+    }
 }
 
 fn half_metal(h: HalfMetal, from: &[String]) -> Value {
@@ -257,12 +285,17 @@ fn half_metal(h: HalfMetal, from: &[String]) -> Value {
         }),
         HalfMetal::Suffices => json!({ "answer": "suffices as it is" }),
         HalfMetal::OutOfReach => json!({ "answer": "out of reach" }),
+        HalfMetal::NotAsked => json!({ "answer": "no lower limit asked for" }),
+        HalfMetal::NotFound => json!({ "answer": "not computed" }),
     }
 }
 
 fn window(a: &Assessment, w: &Result<Window, NoWindow>, from: &[String]) -> Value {
     match w {
         Ok(w) => {
+            let mut from = from.to_vec();
+            from.extend(gamma_records(a, w).into_iter().filter(|id| !from.contains(id)).collect::<Vec<_>>());
+            let from = from.as_slice();
             let edge = |e: Option<f64>| e.map(|x| number(x, AREA, from, false));
             let unit = si_unit(w.wish.target.kind().scale);
             json!({
@@ -392,12 +425,12 @@ fn faces(a: &Assessment, from: &[String], strained: bool) -> Value {
             .iter()
             .map(|f| {
                 let u = f.accumulation_per_current_density.si();
-                let v = f.potential_per_current_density.si();
+                let [up, down] = channel_potentials(f);
                 json!({
                     "polarization": n(f.polarization.si(), "1"),
                     "spin_accumulation_per_current_density": n(u, AREA),
-                    "potential_up_per_current_density": n(v + u, AREA),
-                    "potential_down_per_current_density": n(v - u, AREA),
+                    "potential_up_per_current_density": n(up.si(), AREA),
+                    "potential_down_per_current_density": n(down.si(), AREA),
                 })
             })
             .collect()
@@ -433,9 +466,10 @@ fn spread(s: &Spread, unit: &'static str) -> Value {
 }
 
 fn inputs(a: &Assessment) -> Vec<Value> {
-    let all = a.device.table.inputs();
-    all.iter()
-        .enumerate()
+    let table = a.device.table.inputs().iter().enumerate().map(|(i, input)| (Some(i), input));
+    let likely = a.device.likely.iter().map(|l| (None, &l.input));
+    table
+        .chain(likely)
         .map(|(i, input)| {
             let origin = match &input.provenance.origin {
                 Origin::Design { note, overrides, place } => json!({
@@ -454,8 +488,9 @@ fn inputs(a: &Assessment) -> Vec<Value> {
                 "value": number(input.reading.si, si_unit(input.kind.scale), &ids, false),
                 "spread": spread(&input.reading.spread, si_unit(input.kind.scale)),
                 "as_written": input.reading.text,
-                "share": a.shares.iter().find(|s| s.column == i).map(|s| number(s.share, "1", &[], false)),
+                "share": a.shares.iter().find(|s| i.is_some_and(|i| s.columns.contains(&i))).map(|s| number(s.share, "1", &[], false)),
                 "origin": origin,
+                "for_the_window_only": i.is_none(),
                 "marks": input.provenance.marks.iter().map(|m| mark(m).replace('\u{a0}', " ")).collect::<Vec<_>>(),
             })
         })
@@ -471,7 +506,7 @@ fn honesty(a: &Assessment) -> Value {
         "assumed": h.assumed,
         "without_spread": h.not_spread,
         "carry_most": h.carriers.iter().map(|s| json!({
-            "name": a.device.table.inputs()[s.column].name,
+            "names": s.columns.iter().map(|c| a.device.table.inputs()[*c].name.as_str()).collect::<Vec<_>>(),
             "share": number(s.share, "1", &[], false),
         })).collect::<Vec<_>>(),
         "share_of_recalled_and_assumed": number(h.doubtful_share, "1", &[], false),
@@ -484,6 +519,10 @@ fn honesty(a: &Assessment) -> Value {
 pub fn varied(v: &Varied) -> Value {
     let unit = si_unit(v.variation.kind.scale);
     let units = super::varied::columns(v);
+    let mut from: Vec<String> =
+        v.device.table.inputs().iter().flat_map(|i| i.provenance.records()).collect();
+    from.sort();
+    from.dedup();
     let rows: Vec<Value> = v
         .rows
         .iter()
@@ -493,7 +532,7 @@ pub fn varied(v: &Varied) -> Value {
             out.insert("as_written".to_owned(), json!(text));
             out.insert("value".to_owned(), json!(number(row.value, unit, &[], false)));
             for c in &units {
-                out.insert(c.name.to_owned(), json!(number(row.outcome[c.index], si_unit(c.scale), &[], false)));
+                out.insert(c.name.to_owned(), json!(number(row.outcome[c.index], si_unit(c.scale), &from, false)));
             }
             if !v.goals.is_empty() {
                 out.insert("goals_met".to_owned(), json!(row.goals_met));

@@ -20,10 +20,9 @@ use super::wording::{finding, percent_share, position, severity_mark};
 /// Most lines of the short answer.
 pub const MOST_LINES: usize = 24;
 
-/// Largest current density that voltages are told for where none is stated, A/m², and the drop over the
-/// stack that they are kept below.
-const MOST_CURRENT_DENSITY: f64 = 1e9;
-const MOST_DROP: f64 = 0.1;
+
+/// Most elements that the sketch of a stack names.
+const LONGEST_SKETCH: usize = 11;
 
 /// The stack in one line: `iron | magnesia | silicon`.
 #[must_use]
@@ -33,6 +32,10 @@ pub fn sketch(a: &Assessment) -> String {
     for (i, name) in device.names.iter().enumerate() {
         let label = if is_bare(device, i) { "bare".to_owned() } else { name.label.clone() };
         parts.push(label);
+    }
+    if parts.len() > LONGEST_SKETCH {
+        let left_out = parts.len() - LONGEST_SKETCH + 1;
+        parts.splice(LONGEST_SKETCH / 2..LONGEST_SKETCH / 2 + left_out, [format!("… {left_out} more …")]);
     }
     parts.join(" | ")
 }
@@ -64,25 +67,12 @@ fn with_goal(a: &Assessment, target: Target, value: String) -> String {
     format!("{value}{gap}{}", goals.join("; "))
 }
 
-/// The current density that voltages are told for: the design's, or the largest power of ten in A/cm² that
-/// keeps the drop over the stack below a tenth of a volt. And whether the design states it.
-#[must_use]
-pub fn current_density(a: &Assessment) -> (f64, bool) {
-    match a.device.current_density {
-        Some(j) => (j.si(), true),
-        None => {
-            let most = MOST_DROP / a.resistance_area[0].si().max(f64::MIN_POSITIVE);
-            (10.0_f64.powf(most.log10().floor()).min(MOST_CURRENT_DENSITY), false)
-        }
-    }
-}
-
 /// Spin accumulation at the injector, with the current density it is told for.
 #[must_use]
 pub fn accumulation(a: &Assessment) -> String {
     let u = a.outcome.accumulation.si();
-    let (j, stated) = current_density(a);
-    let at = if stated { "at" } else { "per" };
+    let j = a.told_at.si();
+    let at = if a.device.current_density.is_some() { "at" } else { "per" };
     format!("{} {at} {}", voltage(u * j), current_density_text(j))
 }
 
@@ -143,7 +133,7 @@ pub fn why(a: &Assessment, m: &Mismatch) -> String {
 fn asymmetry_text(a: &Assessment, w: &Window) -> String {
     let gamma = w.asymmetry.si();
     if w.asymmetry_is_likely {
-        let likely = a.device.likely.as_ref();
+        let likely = a.device.likely.iter().find(|l| l.element == w.contact);
         let from = likely.map_or(String::new(), |l| {
             let borrowed = l.input.provenance.marks.iter().any(|m| {
                 matches!(m, crate::materials::choose::Mark::Borrowed { .. })
@@ -159,7 +149,11 @@ fn asymmetry_text(a: &Assessment, w: &Window) -> String {
 /// Which contacts are scaled, where there are several, and whether they are alike.
 fn together(a: &Assessment, w: &Window) -> String {
     if w.contacts.len() < 2 {
-        return String::new();
+        let bare = w.here.si() > 0.0
+            && a.device.channel_contacts.iter().any(|i| {
+                *i != w.contact && a.blueprint.interface(*i).is_some_and(|x| x.spin_resistance.si() <= 0.0)
+            });
+        return if bare { "; the bare contact stays bare".to_owned() } else { String::new() };
     }
     let product = |i: &usize| {
         a.blueprint.interface(*i).map_or(0.0, |x| x.spin_resistance.resistance_area(x.asymmetry).si())
@@ -185,17 +179,36 @@ fn together(a: &Assessment, w: &Window) -> String {
     format!("; both contacts{named} scaled together{ratio}")
 }
 
+fn here_text(w: &Window) -> String {
+    if w.here.si() > 0.0 {
+        format!("this design: {}", area(w.here.si()))
+    } else {
+        "this design: no barrier".to_owned()
+    }
+}
+
+/// A window in one line, for several goals.
+fn short_window(found: &Result<Window, NoWindow>) -> String {
+    match found {
+        Ok(w) if w.intervals.is_empty() => {
+            format!("none, best {}", of_target(w.wish.target, w.best.value))
+        }
+        Ok(w) => {
+            let list: Vec<String> = w.intervals.iter().map(|i| window(i.low, i.high)).collect();
+            format!("{}{}", list.join(" and "), position(w))
+        }
+        Err(NoWindow::NoAsymmetry) => "not known: no γ".to_owned(),
+        Err(_) => "not computed".to_owned(),
+    }
+}
+
 /// The window and where the design stands.
 #[must_use]
 pub fn window_text(a: &Assessment, found: &Result<Window, NoWindow>) -> String {
     match found {
         Ok(w) => {
             let together = together(a, w);
-            let stands = if w.here.si() > 0.0 {
-                format!("this design: {}{}", area(w.here.si()), position(w))
-            } else {
-                "this design: no barrier".to_owned()
-            };
+            let stands = format!("{}{}", here_text(w), position(w));
             let where_ = if w.intervals.is_empty() {
                 format!(
                     "none: the best is {}{}",
@@ -215,34 +228,30 @@ pub fn window_text(a: &Assessment, found: &Result<Window, NoWindow>) -> String {
     }
 }
 
-/// The rule of thumb, where the channel is thinner than λ.
+/// The rule of thumb, where it applies.
 #[must_use]
-pub fn rule_of_thumb(a: &Assessment, gamma: f64) -> Option<String> {
-    let m = a.mismatch.as_ref()?;
-    let t = m.reduced_length?;
-    if t >= 1.0 || a.device.channel_contacts.len() < 2 {
-        return None;
-    }
-    let ra = (1.0 - gamma * gamma) * m.r_channel.si();
-    let [low, high] = [ra * t, ra / t];
-    let both = areas(&[low, high]).join(" .. ");
+pub fn rule_of_thumb(a: &Assessment) -> Option<String> {
+    let [low, high] = a.rule_of_thumb?;
+    let both = areas(&[low.si(), high.si()]).join(" .. ");
     Some(format!("{both} from (1−γ²)\u{a0}r_N\u{a0}t/λ .. (1−γ²)\u{a0}r_N\u{a0}λ/t"))
 }
 
 /// What bulk polarization would be needed without a barrier.
 #[must_use]
-pub fn half_metal_text(a: &Assessment, found: HalfMetal) -> String {
+pub fn half_metal_text(a: &Assessment, found: HalfMetal) -> Option<String> {
     let several = a.device.channel_contacts.len() > 1;
     let semiconductor = a.device.name(a.device.channel).is_some_and(|n| n.semiconductor);
     let hypothetical = if semiconductor { " (hypothetical: a depletion region forms)" } else { "" };
     let of = if several { "β of both would" } else { "β would" };
-    match found {
+    Some(match found {
         HalfMetal::Needed { short_of_one } => {
             format!("{of} have to reach {}{hypothetical}", near_one(short_of_one))
         }
         HalfMetal::Suffices => format!("β as it is suffices{hypothetical}"),
         HalfMetal::OutOfReach => format!("no β below 1\u{a0}−\u{a0}10⁻¹² would do{hypothetical}"),
-    }
+        HalfMetal::NotFound => "not computed: β could not be bracketed".to_owned(),
+        HalfMetal::NotAsked => return None,
+    })
 }
 
 /// Where the inputs come from, in one line.
@@ -260,7 +269,7 @@ pub fn honesty(a: &Assessment) -> String {
         counts.push(format!("{} stated in the design", h.stated));
     }
     let counts = match counts.split_first() {
-        None => format!("all {} read or derived", h.inputs),
+        None => format!("all {} from records, none recalled or assumed", h.inputs),
         Some((first, rest)) => {
             let (n, word) = first.split_once(' ').unwrap_or((first, ""));
             let mut text = format!("{n} of {} {word}", h.inputs);
@@ -289,6 +298,11 @@ pub fn summary(a: &Assessment, width: usize) -> Vec<String> {
     let tail = lines.split_off(lines.len() - inputs_row(a, width).len());
     lines.extend(findings_within(a, width, room));
     lines.extend(tail);
+    if lines.len() > MOST_LINES {
+        let left = lines.len() - MOST_LINES + 1;
+        lines.truncate(MOST_LINES - 1);
+        lines.push(format!(" ! {left} more lines: see --full"));
+    }
     lines
 }
 
@@ -301,7 +315,9 @@ fn inputs_row(a: &Assessment, width: usize) -> Vec<String> {
 pub fn summary_rows(a: &Assessment, width: usize) -> Vec<String> {
     let mut head = Vec::new();
     if let Some(title) = &a.title {
-        head.extend(wrap(title, width).into_iter().take(1));
+        // Control characters of a title are not passed on to the terminal.
+        let title: String = title.chars().map(|c| if c.is_control() { ' ' } else { c }).collect();
+        head.extend(wrap(&title, width).into_iter().take(1));
     }
     head.extend(wrap(
         &format!("{}, {}", sketch(a), temperature(a.device.temperature.si())),
@@ -334,28 +350,28 @@ pub fn summary_rows(a: &Assessment, width: usize) -> Vec<String> {
     if let Some(m) = &a.mismatch {
         row("why", why(a, m));
     }
-    for g in &a.goals {
-        let label = if a.goals.len() == 1 {
-            "RA that meets the goal".to_owned()
-        } else {
-            format!("RA for {}", short_name(g.goal.target))
-        };
-        row(&label, window_text(a, &g.window));
+    if let [only] = a.goals.as_slice() {
+        row("RA that meets the goal", window_text(a, &only.window));
+    } else {
+        for g in &a.goals {
+            let goal = format!("RA for {} {}", short_name(g.goal.target), comparison(g.goal.target, &g.goal.comparison));
+            row(&goal.replace('\u{a0}', " "), short_window(&g.window));
+        }
+        if let Some(Ok(w)) = a.goals.first().map(|g| &g.window) {
+            row("", format!("({}{}); {}", asymmetry_text(a, w), together(a, w), here_text(w)));
+        }
     }
     if let Some(w) = &a.default_window {
         let of = short_name(a.wish.target);
         row(&format!("RA for half the best {of}"), window_text(a, w));
     }
-    let gamma = a.goals.first().map(|g| &g.window).or(a.default_window.as_ref());
-    if let Some(Ok(w)) = gamma
-        && let Some(text) = rule_of_thumb(a, w.asymmetry.si())
-    {
+    if let Some(text) = rule_of_thumb(a) {
         row("rule of thumb", text);
     }
     let found = a.goals.first().map(|g| g.half_metal).or(a.default_half_metal);
-    if let Some(found) = found {
+    if let Some(text) = found.and_then(|found| half_metal_text(a, found)) {
         let label = if has_barrier(a) { "without a barrier" } else { "without that resistance" };
-        row(label, half_metal_text(a, found));
+        row(label, text);
     }
     head.into_iter().chain(body).chain(inputs_row(a, width)).collect()
 }
@@ -421,7 +437,7 @@ pub fn written(w: Written) -> &'static str {
 /// The share of an input, for tables.
 #[must_use]
 pub fn share(a: &Assessment, column: usize) -> String {
-    a.shares.iter().find(|s| s.column == column).map_or("–".to_owned(), |s| percent_share(s.share))
+    a.shares.iter().find(|s| s.columns.contains(&column)).map_or("–".to_owned(), |s| percent_share(s.share))
 }
 
 /// Name of a position, for tables.

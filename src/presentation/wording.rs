@@ -57,7 +57,7 @@ pub fn rule_text(name: &str) -> &'static str {
         "memory-loss-outside-temperature" => "a spin-memory loss measured at another temperature is used",
         "asymmetry-near-one" => "β or γ is within its own uncertainty of ±1 or nearer to it than 0.01, where 1/(1 − β²) diverges",
         "uncertain-inputs-matter" => "recalled or assumed inputs carry a tenth or more of the answer's spread",
-        "interface-left-out" => "a direct contact between metals has no record of an interface resistance and is taken without one",
+        "interface-left-out" => "an interface between two materials of the library has no record and is taken without resistance",
         "not-linear" => "the spin accumulation of a channel that is not metallic exceeds kT/e: the linear model strains",
         "drift" => "the electric field times λ exceeds kT/e in a channel that is not metallic: drift changes its spin diffusion length",
         "strip-resistance-left-out" => "an end is fed in its plane: the strip's own series resistance is not counted",
@@ -177,13 +177,18 @@ pub fn finding(f: &Finding) -> String {
             let list: Vec<String> = inputs
                 .iter()
                 .map(|i| {
-                    format!("{} ({}, {})", i.name, percent_share(i.share), if i.recalled { "recalled" } else { "assumed" })
+                    format!(
+                        "{} ({}, {})",
+                        i.names.join(" with "),
+                        percent_share(i.share),
+                        if i.recalled { "recalled" } else { "assumed" }
+                    )
                 })
                 .collect();
             format!("The spread of the {} leans on {}.", target_name(*target), list.join(", "))
         }
         Finding::InterfaceLeftOut { path } => format!(
-            "{path}: no record of this direct contact; it is taken without resistance, asymmetry or spin loss."
+            "{path}: no record of this interface; it is taken without resistance, asymmetry or spin loss."
         ),
         Finding::NotLinear { accumulation, thermal } => format!(
             "The spin accumulation, {}, exceeds kT/e = {}: the linear model overstates it in a non-degenerate channel.",
@@ -275,7 +280,9 @@ pub fn mark(m: &Mark) -> String {
         Mark::Borrowed { polarization } => {
             format!("borrowed from a tunnel polarization of {}", asymmetry(*polarization))
         }
-        Mark::OtherBarrier { barrier } => format!("of another barrier, {barrier}"),
+        Mark::LengthScaled => "λ follows the stated resistivity, ρλ of the pair held".to_owned(),
+        Mark::LengthNotScaled => "λ not scaled with the stated resistivity".to_owned(),
+        Mark::MixedTechniques => "β and ρλ from different techniques".to_owned(),
         Mark::ResistivityAssumed => "resistivity not from the same paper".to_owned(),
         Mark::Disagrees { with } => format!("disagrees with {}", with.join(", ")),
         Mark::NearUnity => "within its uncertainty of one".to_owned(),

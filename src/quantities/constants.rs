@@ -17,3 +17,5 @@ pub const BOHR_MAGNETON: f64 = 9.274_010_065_7e-24;
 pub const ELECTRON_MASS: f64 = 9.109_383_713_9e-31;
 /// Vacuum electric permittivity, F/m. Relative uncertainty 1.6e-10.
 pub const VACUUM_PERMITTIVITY: f64 = 8.854_187_818_8e-12;
+/// Vacuum magnetic permeability, T m/A. Relative uncertainty 1.6e-10.
+pub const VACUUM_PERMEABILITY: f64 = 1.256_637_061_27e-6;

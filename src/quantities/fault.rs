@@ -147,7 +147,9 @@ impl ReadFault {
             ReadFaultKind::UnitMissing { kind } => Some(examples(kind)),
             ReadFaultKind::OutOfRange { value, kind } => {
                 // "10" for a ratio is nearly always meant in per cent.
-                let in_percent = value.parse::<f64>().is_ok_and(|x| kind.percent && kind.range.holds(x / 100.0));
+                let in_percent = value
+                    .parse::<f64>()
+                    .is_ok_and(|x| x.abs() >= 2.0 && kind.percent && kind.range.holds(x / 100.0));
                 Some(if in_percent {
                     format!("did you mean {value} %? {}", limits(kind))
                 } else {

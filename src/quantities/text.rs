@@ -4,6 +4,7 @@
 //! `> 230 nm`. A per cent sign behind a quantity that is itself written in per cent means percentage
 //! points, behind any other quantity a part of the value.
 
+use super::constants::VACUUM_PERMEABILITY;
 use super::dimensions::{Dimension, Measured};
 pub use super::fault::{ReadFault, ReadFaultKind, dimension_names};
 use super::form::{Form, Mark, Placed, Splitter, bound_at, spread_fault};
@@ -12,9 +13,6 @@ use super::number::{Number, skip_spaces};
 use super::spread::{Side, Spread};
 pub use super::unit::Context;
 use super::unit::Special;
-
-/// Vacuum magnetic permeability, T m/A. Source: CODATA 2022, relative uncertainty 1.6e-10.
-const VACUUM_PERMEABILITY: f64 = 1.256_637_061_27e-6;
 
 /// A value read from a text.
 #[derive(Clone, PartialEq, Debug)]

@@ -2,7 +2,7 @@
 //! would fix it.
 
 use crate::designs::design::{Design, Part, Written};
-use crate::designs::goals::Goal;
+use crate::designs::goals::{Goal, Target};
 use crate::designs::layers::EndWord;
 use crate::devices::inputs::Input;
 use crate::devices::provenance::Origin;
@@ -12,6 +12,7 @@ use crate::materials::library::Library;
 use crate::materials::record::{ContactKind, ContactRecord, Obtained};
 use crate::materials::references::Reference;
 use crate::models::ladder::{Face, StackFault, State};
+use crate::quantities::dimensions::{ElectricCurrentDensity, Measured, ResistanceTimesArea};
 use crate::quantities::meanings::ResistanceAreaProduct;
 use crate::quantities::text::Reading;
 
@@ -105,6 +106,12 @@ pub struct Assessment {
     pub resistance_area: [ResistanceAreaProduct; 2],
     /// Why.
     pub mismatch: Option<Mismatch>,
+    /// Current density that voltages are told for: the design's, or the largest power of ten in A/cm² up to
+    /// 10⁵ that keeps the drop over the stack below a tenth of a volt.
+    pub told_at: ElectricCurrentDensity,
+    /// The rule of thumb for the magnetoresistance of two contacts, (1 − γ²) r_N t/λ and (1 − γ²) r_N λ/t;
+    /// only where it applies: a channel thinner than λ between two contacts, magnetoresistance asked for.
+    pub rule_of_thumb: Option<[ResistanceAreaProduct; 2]>,
     /// What is asked first: the first goal's quantity, or the default.
     pub wish: Wish,
     /// Goals.
@@ -181,6 +188,8 @@ pub fn assess(design: &Design, device: Vertical, library: &Library) -> Result<As
         outcome,
         faces: [parallel.faces, antiparallel.faces],
         resistance_area: [parallel.resistance_area, antiparallel.resistance_area],
+        told_at: told_at(device.current_density, parallel.resistance_area),
+        rule_of_thumb: rule_of_thumb(design, wish, mismatch.as_ref()),
         mismatch,
         wish,
         goals,
@@ -199,6 +208,39 @@ pub fn assess(design: &Design, device: Vertical, library: &Library) -> Result<As
     Ok(assessment)
 }
 
+fn told_at(
+    stated: Option<ElectricCurrentDensity>,
+    resistance_area: ResistanceAreaProduct,
+) -> ElectricCurrentDensity {
+    const MOST: f64 = 1e9;
+    const DROP: f64 = 0.1;
+    stated.unwrap_or_else(|| {
+        let most = DROP / resistance_area.si().max(f64::MIN_POSITIVE);
+        ElectricCurrentDensity::from_si(10.0_f64.powf(most.log10().floor()).min(MOST))
+    })
+}
+
+/// Source: Fert and Jaffrès, Phys. Rev. B 64, 184420 (2001) [the window r_N t/λ ≪ r_b* ≪ r_N λ/t, recalled].
+fn rule_of_thumb(
+    design: &Design,
+    wish: Wish,
+    mismatch: Option<&Mismatch>,
+) -> Option<[ResistanceAreaProduct; 2]> {
+    let m = mismatch.filter(|m| m.r_interface.si() > 0.0)?;
+    let t = m.reduced_length.filter(|t| *t < 1.0)?;
+    let applies = wish.target == Target::Magnetoresistance && design.written == Written::TwoContacts;
+    let g = m.asymmetry.si();
+    let ra = (1.0 - g) * (1.0 + g) * m.r_channel.si();
+    applies.then(|| [ResistanceAreaProduct::from_si(ra * t), ResistanceAreaProduct::from_si(ra / t)])
+}
+
+/// V↑ and V↓ at a face per current density, Ω m².
+#[must_use]
+pub fn channel_potentials(face: &Face) -> [ResistanceTimesArea; 2] {
+    let (v, u) = (face.potential_per_current_density, face.accumulation_per_current_density);
+    [v + u, v - u]
+}
+
 fn honesty(device: &Vertical, shares: &[Share]) -> Honesty {
     let inputs = device.table.inputs();
     let doubtful = |i: &Input| i.provenance.is_recalled() || i.provenance.is_assumed();
@@ -209,9 +251,9 @@ fn honesty(device: &Vertical, shares: &[Share]) -> Honesty {
         stated: count(&|i| matches!(i.provenance.origin, Origin::Design { .. })),
         recalled: count(&|i| i.provenance.is_recalled()),
         assumed: count(&|i| i.provenance.is_assumed() && !i.provenance.is_recalled()),
-        not_spread: inputs.len() - shares.len(),
-        doubtful_carriers: carriers.iter().filter(|s| doubtful(&inputs[s.column])).count(),
-        doubtful_share: shares.iter().filter(|s| doubtful(&inputs[s.column])).map(|s| s.share).sum(),
+        not_spread: inputs.len() - shares.iter().map(|s| s.columns.len()).sum::<usize>(),
+        doubtful_carriers: carriers.iter().filter(|s| doubtful(&inputs[s.first()])).count(),
+        doubtful_share: shares.iter().filter(|s| doubtful(&inputs[s.first()])).map(|s| s.share).sum(),
         carriers,
     }
 }
@@ -222,8 +264,11 @@ fn check_values(design: &Design, device: &Vertical, library: &Library) -> Vec<Ch
     let (Some(f), Some(n)) = (material(device.injector), material(device.channel)) else {
         return Vec::new();
     };
+    let path = device.injector_contact.and_then(|i| device.name(Position::Element(i))).map(|n| &n.path);
     let barrier = design.parts.iter().find_map(|p| match p {
-        Part::Contact(c) => c.material.as_ref().and_then(|m| library.id_of(&m.value)),
+        Part::Contact(c) if Some(&c.path) == path => {
+            c.material.as_ref().and_then(|m| library.id_of(&m.value))
+        }
         _ => None,
     });
     library
@@ -254,7 +299,7 @@ fn check_numbers(c: &ContactRecord) -> Vec<CheckValue> {
 
 fn references(a: &Assessment, library: &Library) -> Vec<(String, Option<Reference>)> {
     let mut keys: Vec<String> = Vec::new();
-    let inputs = a.device.table.inputs().iter().chain(a.device.likely.as_ref().map(|l| &l.input));
+    let inputs = a.device.table.inputs().iter().chain(a.device.likely.iter().map(|l| &l.input));
     let from_inputs = inputs.filter_map(|i| match &i.provenance.origin {
         Origin::Record { source, .. } => source.clone(),
         Origin::Design { .. } => None,

@@ -67,9 +67,9 @@ pub static RULES: &[Rule] = &[
 /// An input that matters, for findings about inputs.
 #[derive(Clone, PartialEq, Debug)]
 pub struct Named {
-    /// Name of the input.
-    pub name: String,
-    /// Record, if it comes from one.
+    /// Names of the inputs that move together.
+    pub names: Vec<String>,
+    /// Record, if they come from one.
     pub record: Option<String>,
     /// Share of Σ(change)².
     pub share: f64,
@@ -237,7 +237,7 @@ pub enum Finding {
         /// The inputs.
         inputs: Vec<Named>,
     },
-    /// A direct contact between metals has no record and no resistance.
+    /// A direct interface has no record and no resistance.
     InterfaceLeftOut {
         /// Path.
         path: String,

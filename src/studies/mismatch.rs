@@ -105,6 +105,8 @@ fn dwell(
 /// The bulk asymmetry that would meet a demand without a barrier.
 #[derive(Clone, Copy, PartialEq, Debug)]
 pub enum HalfMetal {
+    /// The demand sets no lower limit: there is nothing that a larger β would have to reach.
+    NotAsked,
     /// 1 − |β| that is needed.
     Needed {
         /// 1 − |β|.
@@ -114,6 +116,8 @@ pub enum HalfMetal {
     Suffices,
     /// No β below 1 − 10⁻¹² meets it.
     OutOfReach,
+    /// The root could not be found.
+    NotFound,
 }
 
 /// Smallest 1 − |β| looked at.
@@ -130,6 +134,9 @@ pub fn half_metal(
     wish: Wish,
     demand: Comparison,
 ) -> Result<HalfMetal, StackFault> {
+    if matches!(demand, Comparison::AtMost(_)) {
+        return Ok(HalfMetal::NotAsked);
+    }
     let mut bare = blueprint.clone();
     for i in &device.channel_contacts {
         if let Some(interface) = bare.interface_mut(*i) {
@@ -153,15 +160,16 @@ pub fn half_metal(
     };
     let points = 120;
     let floor = NEAREST_TO_ONE.log10();
-    let mut previous = (0.0, margin(0.0));
-    for i in 1..=points {
+    let mut previous = (0.0, 0.0);
+    for i in 0..=points {
         let x = floor * f64::from(i) / f64::from(points);
         let here = margin(x);
         if here >= 0.0 {
-            return Ok(bracketed_root(margin, x, previous.0, 1e-12)
-                .map_or(HalfMetal::OutOfReach, |root| HalfMetal::Needed {
-                    short_of_one: 10.0_f64.powf(root),
-                }));
+            // The first point, β = 0, can meet a goal `a .. b` by nothing but the other contact.
+            let root = if i == 0 { Ok(x) } else { bracketed_root(margin, x, previous.0, 1e-12) };
+            return Ok(root.map_or(HalfMetal::NotFound, |root| HalfMetal::Needed {
+                short_of_one: 10.0_f64.powf(root),
+            }));
         }
         previous = (x, here);
     }

@@ -1,7 +1,6 @@
 //! What a colleague would notice about an answer: the conditions of every finding.
 
 use crate::designs::design::{Design, Part, Written};
-use crate::designs::goals::Target;
 use crate::designs::layers::ContactSpec;
 use crate::devices::inputs::Input;
 use crate::devices::vertical::{EndPlan, Position};
@@ -30,7 +29,6 @@ const HIDDEN: f64 = 0.01;
 pub(super) fn notice(a: &Assessment, design: &Design, library: &Library) -> Vec<Finding> {
     let mut out = Vec::new();
     if let Some(m) = &a.mismatch
-        && a.wish.target == Target::InjectedPolarization
         && m.channel.si() > MISMATCH * m.contact.si()
     {
         out.push(Finding::ConductivityMismatch {
@@ -173,21 +171,24 @@ fn barriers(a: &Assessment, design: &Design, library: &Library, out: &mut Vec<Fi
 }
 
 fn bare_contacts(a: &Assessment, out: &mut Vec<Finding>) {
-    let channel = a.device.name(a.device.channel);
-    for element in &a.device.channel_contacts {
-        if a.blueprint.interface(*element).is_none_or(|x| x.spin_resistance.si() > 0.0) {
+    for element in 0..a.blueprint.elements.len() {
+        if a.blueprint.interface(element).is_none_or(|x| x.spin_resistance.si() > 0.0) {
             continue;
         }
-        if let Some(n) = channel.filter(|n| n.semiconductor) {
-            let other = a.device.neighbours(*element).into_iter().find(|at| a.device.is_ferromagnet(*at));
-            out.push(Finding::BareSemiconductor {
-                ferromagnet: other
-                    .and_then(|at| a.device.name(at))
-                    .map_or(String::new(), |f| f.label.clone()),
+        let sides = a.device.neighbours(element);
+        let [Some(left), Some(right)] = sides.map(|at| a.device.name(at)) else { continue };
+        let magnet = sides.into_iter().find(|at| a.device.is_ferromagnet(*at));
+        let semiconductor = [left, right].into_iter().find(|n| n.semiconductor);
+        match (magnet.and_then(|at| a.device.name(at)), semiconductor) {
+            (Some(f), Some(n)) => out.push(Finding::BareSemiconductor {
+                ferromagnet: f.label.clone(),
                 channel: n.label.clone(),
-            });
-        } else if channel.is_some_and(|n| n.material.is_some()) {
-            out.push(Finding::InterfaceLeftOut { path: path(a, Position::Element(*element)) });
+            }),
+            // Between layers of stated numbers the user decides; two layers of one material join.
+            _ if left.material.is_some() && right.material.is_some() && left.material != right.material => {
+                out.push(Finding::InterfaceLeftOut { path: path(a, Position::Element(element)) });
+            }
+            _ => {}
         }
     }
 }
@@ -227,7 +228,9 @@ fn strained(a: &Assessment, library: &Library, design: &Design, out: &mut Vec<Fi
     if name.is_some_and(|n| n.material.is_some() && !n.semiconductor) || is_metallic(a, library, design) {
         return;
     }
-    for caveat in validity::channel(layer, a.outcome.accumulation, j, a.device.temperature) {
+    let (p, ap) = (a.outcome.accumulation, a.outcome.accumulation_antiparallel);
+    let larger = if ap.si().abs() > p.si().abs() { ap } else { p };
+    for caveat in validity::channel(layer, larger, j, a.device.temperature) {
         match caveat {
             Caveat::Nonlinear { accumulation, thermal } => {
                 out.push(Finding::NotLinear { accumulation, thermal });
@@ -259,7 +262,7 @@ fn is_metallic(a: &Assessment, library: &Library, design: &Design) -> bool {
 }
 
 fn all_inputs(a: &Assessment) -> Vec<&Input> {
-    a.device.table.inputs().iter().chain(a.device.likely.as_ref().map(|l| &l.input)).collect()
+    a.device.table.inputs().iter().chain(a.device.likely.iter().map(|l| &l.input)).collect()
 }
 
 /// What the marks of the records say.
@@ -308,10 +311,10 @@ fn records(a: &Assessment, out: &mut Vec<Finding>) {
         .shares
         .iter()
         .filter(|s| s.share >= MATTERS)
-        .map(|s| (s, &table[s.column]))
+        .map(|s| (s, &table[s.first()]))
         .filter(|(_, i)| i.provenance.is_recalled() || i.provenance.is_assumed())
         .map(|(s, i)| Named {
-            name: i.name.clone(),
+            names: s.columns.iter().map(|c| table[*c].name.clone()).collect(),
             record: i.provenance.records().first().cloned(),
             share: s.share,
             recalled: i.provenance.is_recalled(),

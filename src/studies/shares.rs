@@ -6,15 +6,42 @@ use crate::models::ladder::StackFault;
 
 use super::target::Wish;
 
-/// One input's part.
+/// The part of one input, or of several that come from the same number of the same record and therefore
+/// move together.
 #[derive(Clone, PartialEq, Debug)]
 pub struct Share {
-    /// Column of the input table.
-    pub column: usize,
+    /// Columns of the input table.
+    pub columns: Vec<usize>,
     /// Mean absolute change per standard deviation, SI.
     pub change: f64,
     /// Share of Σ(change)², 0 to 1.
     pub share: f64,
+}
+
+impl Share {
+    /// The first of its columns, which stands for all.
+    #[must_use]
+    pub fn first(&self) -> usize {
+        self.columns.first().copied().unwrap_or(0)
+    }
+}
+
+/// Columns that move together: the same key of the same record.
+fn groups(device: &Vertical) -> Vec<Vec<usize>> {
+    let inputs = device.table.inputs();
+    let key = |i: usize| {
+        let record = inputs[i].provenance.records().first().cloned()?;
+        Some((record, inputs[i].name.rsplit('.').next().unwrap_or("").to_owned()))
+    };
+    let mut all: Vec<(Option<(String, String)>, Vec<usize>)> = Vec::new();
+    for i in 0..inputs.len() {
+        let this = key(i);
+        match all.iter_mut().find(|(known, _)| this.is_some() && *known == this) {
+            Some((_, columns)) => columns.push(i),
+            None => all.push((this, vec![i])),
+        }
+    }
+    all.into_iter().map(|(_, columns)| columns).collect()
 }
 
 /// Shares of all inputs that have a spread, largest first. Inputs whose spread is exact, a bound or
@@ -25,17 +52,17 @@ pub struct Share {
 pub fn shares(device: &Vertical, wish: Wish) -> Result<Vec<Share>, StackFault> {
     let central = wish.of_outcome(&device.evaluate(device.table.central().view())?);
     let mut all = Vec::new();
-    for column in 0..device.table.inputs().len() {
+    for columns in groups(device) {
         let mut changes = Vec::new();
         for sigmas in [1.0, -1.0] {
-            if let Some(row) = device.table.moved(column, sigmas) {
+            if let Some(row) = device.table.moved(&columns, sigmas) {
                 let moved = wish.of_outcome(&device.evaluate(row.view())?);
                 changes.push((moved - central).abs());
             }
         }
         if !changes.is_empty() {
             let change = changes.iter().sum::<f64>() / changes.len() as f64;
-            all.push(Share { column, change, share: 0.0 });
+            all.push(Share { columns, change, share: 0.0 });
         }
     }
     let total: f64 = all.iter().map(|s| s.change * s.change).sum();
@@ -46,7 +73,7 @@ pub fn shares(device: &Vertical, wish: Wish) -> Result<Vec<Share>, StackFault> {
     }
     // Equal shares differ in the last bits: the order of the table breaks the tie.
     let whole = |s: &Share| (s.share * 1e9).round();
-    all.sort_by(|a, b| whole(b).total_cmp(&whole(a)).then(a.column.cmp(&b.column)));
+    all.sort_by(|a, b| whole(b).total_cmp(&whole(a)).then(a.columns.cmp(&b.columns)));
     Ok(all)
 }
 

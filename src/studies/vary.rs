@@ -69,6 +69,8 @@ fn row(value: f64, outcome: [f64; Outcome::COLUMNS.len()], goals: &[Goal]) -> Va
 /// Either way each row equals a single run with that value set.
 pub fn vary(root: &Node, variation: Variation, library: &Library, faults: &Faults) -> Option<Varied> {
     let (device, goals) = device_at(root, &variation, 0, library, faults)?;
+    // A range can leave what a design allows at its far end: what a single run refuses is refused here.
+    device_at(root, &variation, variation.points.len().saturating_sub(1), library, faults)?;
     let readings: Option<Vec<f64>> = variation
         .points
         .iter()

@@ -1,9 +1,9 @@
 //! The window: which resistance-area products meet a demand.
 //!
-//! The quantity is followed over the resistance-area product on a grid of 24 points a decade, sharpened
-//! wherever it peaks short of the demand or passes through zero, and every edge is then found by a
-//! bracketed root on the ladder. With several contacts at the channel all their products are scaled by
-//! one factor; the window is told as the product of the reference contact.
+//! The quantity is followed over the resistance-area product on a grid of 24 points a decade; its zeros and
+//! extrema are added, so that it is monotone between points, and every edge is then found by a bracketed
+//! root on the ladder. With several contacts at the channel their products are scaled by one factor; the
+//! window is told as the product of the reference contact.
 
 use crate::devices::vertical::{Blueprint, Vertical};
 use crate::designs::goals::Comparison;
@@ -141,37 +141,46 @@ pub fn window(
     let first = *contacts.first().ok_or(NoWindow::NoContact)?;
     let reference = contacts.iter().copied().find(|i| product(*i) > 0.0).unwrap_or(first);
     let here = product(reference);
-    let likely = device.likely.as_ref().map(|l| l.input.reading.value::<InterfaceAsymmetry>());
     let gamma_of = |i: usize| -> Result<(InterfaceAsymmetry, bool), NoWindow> {
-        let own = blueprint.interface(i).map(|x| x.asymmetry);
-        match own {
+        match blueprint.interface(i).map(|x| x.asymmetry) {
             Some(gamma) if device.states_asymmetry(i) => Ok((gamma, false)),
-            _ => likely.map(|g| (g, true)).ok_or(NoWindow::NoAsymmetry),
+            _ => device
+                .likely
+                .iter()
+                .find(|l| l.element == i)
+                .map(|l| (l.input.reading.value::<InterfaceAsymmetry>(), true))
+                .ok_or(NoWindow::NoAsymmetry),
         }
     };
     let mut scaled = Scaled { device, base: blueprint.clone(), contacts: Vec::new(), wish };
     for i in contacts.iter().copied() {
+        // A factor on nothing is nothing: beside a contact with resistance a bare one stays bare.
         let factor = if here > 0.0 { product(i) / here } else { 1.0 };
-        scaled.contacts.push((i, factor, gamma_of(i)?.0));
+        if factor > 0.0 {
+            scaled.contacts.push((i, factor, gamma_of(i)?.0));
+        }
     }
     let (asymmetry, asymmetry_is_likely) = gamma_of(reference)?;
     let mut grid = follow(&scaled)?;
-    let best_of = |grid: &[(f64, f64)], score: &dyn Fn(f64) -> f64| {
+    if grid.is_empty() {
+        return Err(NoWindow::NotFound);
+    }
+    cross_zero(&scaled, &mut grid)?;
+    sharpen(&scaled, &mut grid, &f64::abs)?;
+    sharpen(&scaled, &mut grid, &|v| -v.abs())?;
+    let best_of = |score: &dyn Fn(f64) -> f64| {
         grid.iter().copied().max_by(|a, b| score(a.1).total_cmp(&score(b.1)))
     };
     let (threshold, fraction) = match demand {
         Demand::Goal(comparison) => (comparison, None),
         Demand::FractionOfMost(fraction) => {
-            sharpen(&scaled, &mut grid, &|v| v.abs())?;
-            let most = best_of(&grid, &f64::abs).map_or(0.0, |(_, v)| v.abs());
+            let most = best_of(&f64::abs).map_or(0.0, |(_, v)| v.abs());
             (Comparison::AtLeast(fraction * most), Some(fraction))
         }
     };
     let margin = |v: f64| threshold.margin(v);
-    sharpen(&scaled, &mut grid, &margin)?;
-    cross_zero(&scaled, &mut grid)?;
-    let (at, value) = best_of(&grid, &margin).ok_or(NoWindow::NotFound)?;
-    let intervals = edges(&scaled, &grid, &margin)?;
+    let (at, value) = best_of(&margin).ok_or(NoWindow::NotFound)?;
+    let intervals = intervals(&scaled, &grid, &threshold)?;
     Ok(Window {
         wish,
         threshold,
@@ -183,7 +192,7 @@ pub fn window(
         },
         here: ResistanceAreaProduct::from_si(here),
         contact: reference,
-        contacts: contacts.to_vec(),
+        contacts: scaled.contacts.iter().map(|(i, _, _)| *i).collect(),
         asymmetry,
         asymmetry_is_likely,
     })
@@ -234,7 +243,7 @@ fn cross_zero(scaled: &Scaled<'_>, grid: &mut Vec<(f64, f64)>) -> Result<(), NoW
     let mut added = Vec::new();
     for two in grid.windows(2) {
         let [a, b] = two else { continue };
-        if a.1 * b.1 < 0.0 {
+        if (a.1 > 0.0 && b.1 < 0.0) || (a.1 < 0.0 && b.1 > 0.0) {
             let ra = root_between(scaled, a.0, b.0, &|v| v)?;
             added.push((ra, 0.0));
         }
@@ -260,36 +269,52 @@ fn root_between(
     }
 }
 
-fn edges(
+/// Where |quantity| crosses the levels of the demand. Between grid points it is monotone, because its zeros
+/// and extrema are on the grid, so each level is crossed at most once there and both levels of a goal
+/// `a .. b` are found even if they lie between the same two points.
+fn intervals(
     scaled: &Scaled<'_>,
     grid: &[(f64, f64)],
-    margin: &dyn Fn(f64) -> f64,
+    threshold: &Comparison,
 ) -> Result<Vec<Interval>, NoWindow> {
-    let mut intervals = Vec::new();
-    let mut open: Option<Option<f64>> = None;
-    for (i, (ra, value)) in grid.iter().enumerate() {
-        let inside = margin(*value) >= 0.0;
-        match (inside, open) {
-            (true, None) => {
-                open = Some(if i == 0 {
-                    None
-                } else {
-                    Some(root_between(scaled, grid[i - 1].0, *ra, margin)?)
-                });
+    let levels: Vec<f64> = match *threshold {
+        Comparison::AtLeast(a) | Comparison::AtMost(a) => vec![a],
+        Comparison::Between(a, b) => vec![a, b],
+    };
+    let mut edges = Vec::new();
+    for two in grid.windows(2) {
+        let [a, b] = two else { continue };
+        for level in &levels {
+            if (a.1.abs() > *level) != (b.1.abs() > *level) {
+                edges.push(root_between(scaled, a.0, b.0, &|v| v.abs() - level)?);
             }
-            (false, Some(low)) => {
-                let high = root_between(scaled, grid[i - 1].0, *ra, margin)?;
-                intervals.push(Interval {
-                    low: low.map(ResistanceAreaProduct::from_si),
-                    high: Some(ResistanceAreaProduct::from_si(high)),
-                });
-                open = None;
-            }
-            _ => {}
         }
     }
-    if let Some(low) = open {
-        intervals.push(Interval { low: low.map(ResistanceAreaProduct::from_si), high: None });
+    edges.sort_by(f64::total_cmp);
+    let first = grid.first().map_or(0.0, |g| g.0);
+    let last = grid.last().map_or(LARGEST, |g| g.0);
+    let ends: Vec<f64> = [first].into_iter().chain(edges).chain([last]).collect();
+    let mut found: Vec<(usize, usize)> = Vec::new();
+    for (i, two) in ends.windows(2).enumerate() {
+        let [a, b] = two else { continue };
+        if a >= b {
+            continue;
+        }
+        // Inside a piece the demand is met everywhere or nowhere: look in its middle.
+        let middle = if *a > 0.0 { (a * b).sqrt() } else { (SMALLEST * b).sqrt().min(0.5 * b) };
+        if threshold.met(scaled.value(middle)?) {
+            match found.last_mut() {
+                Some(piece) if piece.1 == i => piece.1 = i + 1,
+                _ => found.push((i, i + 1)),
+            }
+        }
     }
-    Ok(intervals)
+    let edge = |i: usize| ResistanceAreaProduct::from_si(ends[i]);
+    Ok(found
+        .into_iter()
+        .map(|(low, high)| Interval {
+            low: (low > 0).then(|| edge(low)),
+            high: (high + 1 < ends.len()).then(|| edge(high)),
+        })
+        .collect())
 }
