@@ -65,7 +65,15 @@ fn beside_scipy(room: &Room) {
     }
     println!(
         "{:>9} {:>12} {:>12} {:>10} {:>12} {:>12} {:>7} {:>7} {:>10}",
-        "layers", "ladder", "solve alone", "ns/layer", "SciPy", "solve alone", "ratio", "lean", "difference"
+        "layers",
+        "ladder",
+        "solve alone",
+        "ns/layer",
+        "SciPy",
+        "solve alone",
+        "ratio",
+        "lean",
+        "difference"
     );
     let mut reached = Vec::new();
     for layers in BESIDE_SCIPY {
@@ -97,7 +105,10 @@ fn beside_scipy(room: &Room) {
                     shown(Duration::from_secs_f64(other.solve)),
                     (other.assembly + other.solve) / whole.as_secs_f64(),
                 );
-                assert!(difference < SAME, "the two answers differ by {difference:e}");
+                assert!(
+                    difference < SAME,
+                    "the two answers differ by {difference:e}"
+                );
                 if let Some((_, goal)) = GOAL_RATIO.iter().find(|(size, _)| *size == layers) {
                     reached.push((
                         format!("SciPy over ladder, {layers} layers"),
@@ -131,8 +142,13 @@ fn growth() {
         .collect();
     let (least, most) = rows
         .iter()
-        .fold((f64::INFINITY, 0.0_f64), |(low, high), (_, ns)| (low.min(*ns), high.max(*ns)));
-    let shown: Vec<String> = rows.iter().map(|(n, ns)| format!("{ns:.1} at {n}")).collect();
+        .fold((f64::INFINITY, 0.0_f64), |(low, high), (_, ns)| {
+            (low.min(*ns), high.max(*ns))
+        });
+    let shown: Vec<String> = rows
+        .iter()
+        .map(|(n, ns)| format!("{ns:.1} at {n}"))
+        .collect();
     goal_line(
         "time a layer, slowest over fastest size",
         &format!("≤ {GOAL_GROWTH}"),
@@ -144,8 +160,14 @@ fn growth() {
 
 fn whole_program(room: &Room) {
     let program = env!("CARGO_BIN_EXE_injectance");
-    let template = Command::new(program).args(["new", "vertical"]).output().expect("program starts");
-    assert!(template.status.success(), "`injectance new vertical` failed");
+    let template = Command::new(program)
+        .args(["new", "vertical"])
+        .output()
+        .expect("program starts");
+    assert!(
+        template.status.success(),
+        "`injectance new vertical` failed"
+    );
     let design = room.file("design.toml");
     fs::write(&design, &template.stdout).expect("design written");
     let mut times: Vec<Duration> = (0..PROCESS_RUNS)
@@ -186,8 +208,11 @@ impl Case {
         let mut magnet = Magnetization::Fixed;
         for i in 0..layers {
             if i % 2 == 0 {
-                magnet = [Magnetization::Fixed, Magnetization::Free, Magnetization::FixedOpposite]
-                    [draw.below(3)];
+                magnet = [
+                    Magnetization::Fixed,
+                    Magnetization::Free,
+                    Magnetization::FixedOpposite,
+                ][draw.below(3)];
             }
             elements.push(Self::interface(&mut draw, magnet));
             elements.push(Element::Layer(if i % 2 == 0 {
@@ -198,7 +223,11 @@ impl Case {
         }
         elements.push(Self::interface(&mut draw, magnet));
         let right = Self::lead(&mut draw);
-        Self { left, right, elements }
+        Self {
+            left,
+            right,
+            elements,
+        }
     }
 
     fn ferromagnet(draw: &mut Draw, magnetization: Magnetization) -> Layer {
@@ -223,7 +252,10 @@ impl Case {
 
     /// A normal end without a stated thickness.
     fn lead(draw: &mut Draw) -> Layer {
-        Layer { thickness: Measured::from_si(f64::INFINITY), ..Self::normal(draw) }
+        Layer {
+            thickness: Measured::from_si(f64::INFINITY),
+            ..Self::normal(draw)
+        }
     }
 
     fn interface(draw: &mut Draw, magnetization: Magnetization) -> Element {
@@ -236,8 +268,12 @@ impl Case {
     }
 
     fn stack(&self) -> Stack {
-        Stack::new(End::SemiInfinite(self.left), &self.elements, End::SemiInfinite(self.right))
-            .expect("a stack with layers")
+        Stack::new(
+            End::SemiInfinite(self.left),
+            &self.elements,
+            End::SemiInfinite(self.right),
+        )
+        .expect("a stack with layers")
     }
 
     fn solve(&self) -> Solution {
@@ -246,7 +282,13 @@ impl Case {
 
     /// The six lines that ladder.py reads; asymmetries carry the sign of the parallel state.
     fn spelled(&self) -> String {
-        let sign = |m: Magnetization| if m == Magnetization::FixedOpposite { -1.0 } else { 1.0 };
+        let sign = |m: Magnetization| {
+            if m == Magnetization::FixedOpposite {
+                -1.0
+            } else {
+                1.0
+            }
+        };
         let mut lines: [String; 6] = Default::default();
         let mut layer = |l: &Layer| {
             let beta = sign(l.magnetization) * l.asymmetry.si();
@@ -277,8 +319,7 @@ impl Case {
     fn difference(&self, mine: &Solution, other: &[Vec<f64>; 3]) -> f64 {
         let column = |f: fn(&injectance::models::ladder::Face) -> f64| mine.faces.iter().map(f);
         let current: Vec<f64> = column(|f| f.polarization.si()).collect();
-        let accumulation: Vec<f64> =
-            column(|f| f.accumulation_per_current_density.si()).collect();
+        let accumulation: Vec<f64> = column(|f| f.accumulation_per_current_density.si()).collect();
         let potential: Vec<f64> = std::iter::once(mine.resistance_area.si())
             .chain(column(|f| f.potential_per_current_density.si()))
             .collect();
@@ -288,7 +329,10 @@ impl Case {
             .map(|(a, b)| {
                 assert_eq!(a.len(), b.len(), "both answer for the same faces");
                 let scale = a.iter().fold(0.0_f64, |m, x| m.max(x.abs()));
-                a.iter().zip(b).fold(0.0_f64, |m, (x, y)| m.max((x - y).abs())) / scale
+                a.iter()
+                    .zip(b)
+                    .fold(0.0_f64, |m, (x, y)| m.max((x - y).abs()))
+                    / scale
             })
             .fold(0.0, f64::max)
     }
@@ -332,12 +376,17 @@ struct Other {
 
 impl Scipy {
     fn found() -> Result<Self, String> {
-        let probe = "import numpy, scipy; print('NumPy', numpy.__version__, 'SciPy', scipy.__version__)";
+        let probe =
+            "import numpy, scipy; print('NumPy', numpy.__version__, 'SciPy', scipy.__version__)";
         let asked = Command::new("python3").args(["-c", probe]).output();
         let out = asked.map_err(|fault| format!("python3 does not start ({fault})"))?;
         if !out.status.success() {
             let words = String::from_utf8_lossy(&out.stderr);
-            return Err(words.lines().last().unwrap_or("python3 lacks NumPy or SciPy").to_owned());
+            return Err(words
+                .lines()
+                .last()
+                .unwrap_or("python3 lacks NumPy or SciPy")
+                .to_owned());
         }
         println!("beside {}", String::from_utf8_lossy(&out.stdout));
         Ok(Self)
@@ -354,19 +403,30 @@ impl Scipy {
             .arg(runs.to_string())
             .output()
             .expect("python3 starts");
-        assert!(out.status.success(), "ladder.py: {}", String::from_utf8_lossy(&out.stderr));
+        assert!(
+            out.status.success(),
+            "ladder.py: {}",
+            String::from_utf8_lossy(&out.stderr)
+        );
         let times = numbers(&String::from_utf8_lossy(&out.stdout));
         let lines = fs::read_to_string(&output).expect("answer read");
         let mut answer: [Vec<f64>; 3] = Default::default();
         for (column, line) in answer.iter_mut().zip(lines.lines()) {
             *column = numbers(line);
         }
-        Other { assembly: times[0], solve: times[1], sum: times[3], answer }
+        Other {
+            assembly: times[0],
+            solve: times[1],
+            sum: times[3],
+            answer,
+        }
     }
 }
 
 fn numbers(line: &str) -> Vec<f64> {
-    line.split_whitespace().map(|word| word.parse().expect("a number")).collect()
+    line.split_whitespace()
+        .map(|word| word.parse().expect("a number"))
+        .collect()
 }
 
 // ---------------------------------------------------------------- time
@@ -401,7 +461,11 @@ fn per_layer(time: Duration, layers: usize) -> f64 {
 
 fn shown(time: Duration) -> String {
     let us = time.as_secs_f64() * 1e6;
-    if us < 1_000.0 { format!("{us:.2} µs") } else { format!("{:.2} ms", us / 1_000.0) }
+    if us < 1_000.0 {
+        format!("{us:.2} µs")
+    } else {
+        format!("{:.2} ms", us / 1_000.0)
+    }
 }
 
 fn goal_line(what: &str, goal: &str, reached: &str) {

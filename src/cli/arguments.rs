@@ -68,7 +68,9 @@ pub struct Folders {
 
 /// `assess`.
 #[derive(Debug, Args)]
-#[command(after_help = "Examples:\n  injectance assess stack.toml\n  injectance assess stack.toml --set channel.thickness=\"40 nm\" --full\n  injectance assess stack.toml --vary injector.barrier.resistance_area=\"1 .. 1e4 Ω µm²\" --points 9")]
+#[command(
+    after_help = "Examples:\n  injectance assess stack.toml\n  injectance assess stack.toml --set channel.thickness=\"40 nm\" --full\n  injectance assess stack.toml --vary injector.barrier.resistance_area=\"1 .. 1e4 Ω µm²\" --points 9"
+)]
 pub struct Assess {
     /// Design file; `-` reads standard input
     #[arg(value_name = "DESIGN")]

@@ -35,7 +35,9 @@ impl std::error::Error for Report {}
 
 impl Diagnostic for Report {
     fn help<'a>(&'a self) -> Option<Box<dyn fmt::Display + 'a>> {
-        self.help.as_ref().map(|h| Box::new(h) as Box<dyn fmt::Display>)
+        self.help
+            .as_ref()
+            .map(|h| Box::new(h) as Box<dyn fmt::Display>)
     }
 
     fn source_code(&self) -> Option<&dyn SourceCode> {
@@ -43,7 +45,9 @@ impl Diagnostic for Report {
     }
 
     fn labels(&self) -> Option<Box<dyn Iterator<Item = LabeledSpan> + '_>> {
-        self.label.clone().map(|l| Box::new(std::iter::once(l)) as Box<dyn Iterator<Item = LabeledSpan>>)
+        self.label
+            .clone()
+            .map(|l| Box::new(std::iter::once(l)) as Box<dyn Iterator<Item = LabeledSpan>>)
     }
 }
 
@@ -61,7 +65,11 @@ fn words(wrong: &Wrong) -> (String, String, Option<String>) {
             ("this is not TOML".to_owned(), reason.clone(), help)
         }
         Wrong::File { reason, help } => (reason.clone(), String::new(), help.clone()),
-        Wrong::UnknownKey { found, allowed, nearest } => (
+        Wrong::UnknownKey {
+            found,
+            allowed,
+            nearest,
+        } => (
             format!("unknown key `{found}`"),
             "not known here".to_owned(),
             Some(match nearest {
@@ -69,37 +77,61 @@ fn words(wrong: &Wrong) -> (String, String, Option<String>) {
                 None => format!("keys here: {}", listed(allowed)),
             }),
         ),
-        Wrong::Missing { key, help } => {
-            (format!("`{key}` is missing"), "here".to_owned(), Some(help.clone()))
-        }
+        Wrong::Missing { key, help } => (
+            format!("`{key}` is missing"),
+            "here".to_owned(),
+            Some(help.clone()),
+        ),
         Wrong::Type { found, expected } => {
             let help = match *expected {
-                "a table" => Some("a table is written `name = { key = \"…\" }`, or `[name]` with its keys below"),
+                "a table" => Some(
+                    "a table is written `name = { key = \"…\" }`, or `[name]` with its keys below",
+                ),
                 "a list of tables" => Some("write `[[name]]` before each entry"),
-                "a text with number and unit" => Some("write number and unit in quotes, as in \"300 K\""),
+                "a text with number and unit" => {
+                    Some("write number and unit in quotes, as in \"300 K\"")
+                }
                 "a list of texts" => Some("write `[\"…\", \"…\"]`"),
                 _ => None,
             };
-            (format!("expected {expected}, found {found}"), format!("this is {found}"), help.map(str::to_owned))
+            (
+                format!("expected {expected}, found {found}"),
+                format!("this is {found}"),
+                help.map(str::to_owned),
+            )
         }
-        Wrong::UnknownWord { what, found, allowed, nearest } => {
+        Wrong::UnknownWord {
+            what,
+            found,
+            allowed,
+            nearest,
+        } => {
             let help = match (nearest, allowed.is_empty()) {
                 (Some(n), true) => Some(format!("did you mean `{n}`?")),
                 (Some(n), false) => Some(format!("did you mean `{n}`? Known: {}", listed(allowed))),
                 (None, false) => Some(format!("known: {}", listed(allowed))),
                 (None, true) => None,
             };
-            (format!("unknown {what} `{found}`"), format!("no such {what}"), help)
+            (
+                format!("unknown {what} `{found}`"),
+                format!("no such {what}"),
+                help,
+            )
         }
         Wrong::Quantity { fault, example } => {
             let label = match (&fault.at, &fault.what) {
-                (Some(_), ReadFaultKind::Unit(_) | ReadFaultKind::Dimension { .. } | ReadFaultKind::NotASpelling { .. }) => {
-                    "this unit"
-                }
+                (
+                    Some(_),
+                    ReadFaultKind::Unit(_)
+                    | ReadFaultKind::Dimension { .. }
+                    | ReadFaultKind::NotASpelling { .. },
+                ) => "this unit",
                 (Some(_), ReadFaultKind::Spread { .. }) => "here",
                 _ => "this value",
             };
-            let help = fault.help().unwrap_or_else(|| format!("write it like \"{example}\""));
+            let help = fault
+                .help()
+                .unwrap_or_else(|| format!("write it like \"{example}\""));
             (fault.message(), label.to_owned(), Some(help))
         }
         Wrong::Conflict { reason, help } => (reason.clone(), "here".to_owned(), help.clone()),
@@ -109,7 +141,11 @@ fn words(wrong: &Wrong) -> (String, String, Option<String>) {
             } else {
                 format!(". Records exist for: {}", listed(exists))
             };
-            (format!("the library has no {what}"), "needed here".to_owned(), Some(format!("{help}{near}")))
+            (
+                format!("the library has no {what}"),
+                "needed here".to_owned(),
+                Some(format!("{help}{near}")),
+            )
         }
     }
 }
@@ -119,7 +155,10 @@ fn report(fault: &Fault) -> Report {
     let place = fault.place.as_ref().filter(|p| !p.source.text.is_empty());
     // A fault of a whole file (a missing table) frames nothing: the file is named instead.
     let whole = place.is_some_and(|p| p.span.start == 0 && p.span.end >= p.source.text.len())
-        && !fault.place.as_ref().is_some_and(|p| p.source.name.starts_with("--"));
+        && !fault
+            .place
+            .as_ref()
+            .is_some_and(|p| p.source.name.starts_with("--"));
     let framed = place.filter(|_| !whole);
     let name = fault.place.as_ref().map(|p| p.source.name.clone());
     let message = match (&name, framed.is_some(), fault.field.is_empty()) {
@@ -142,13 +181,21 @@ fn report(fault: &Fault) -> Report {
 /// Length of the range, cut at the end of its first line: a table is underlined at its head.
 fn first_line(text: &str, span: &std::ops::Range<usize>) -> usize {
     let inside = text.get(span.clone()).unwrap_or("");
-    inside.lines().next().map_or(0, |l| l.trim_end().len()).max(usize::from(!inside.is_empty()))
+    inside
+        .lines()
+        .next()
+        .map_or(0, |l| l.trim_end().len())
+        .max(usize::from(!inside.is_empty()))
 }
 
 /// Faults as text.
 #[must_use]
 pub fn render(faults: &[Fault], width: usize, coloured: bool) -> String {
-    let theme = if coloured { GraphicalTheme::unicode() } else { GraphicalTheme::unicode_nocolor() };
+    let theme = if coloured {
+        GraphicalTheme::unicode()
+    } else {
+        GraphicalTheme::unicode_nocolor()
+    };
     let handler = GraphicalReportHandler::new_themed(theme)
         .with_width(width)
         .with_links(false)
@@ -174,6 +221,10 @@ pub fn render(faults: &[Fault], width: usize, coloured: bool) -> String {
 /// Tells the faults on standard error.
 #[must_use]
 pub fn refuse(faults: &[Fault]) -> Exit {
-    complain(&render(faults, width(None).max(100), coloured_diagnostics()));
+    complain(&render(
+        faults,
+        width(None).max(100),
+        coloured_diagnostics(),
+    ));
     Exit::BadInput
 }

@@ -20,9 +20,15 @@ const DEEPEST: usize = 16;
 
 fn file_fault(name: &str, reason: String, help: Option<&str>) -> Fault {
     Fault {
-        place: Some(Place { source: Source::new(name, ""), span: 0..0 }),
+        place: Some(Place {
+            source: Source::new(name, ""),
+            span: 0..0,
+        }),
         field: String::new(),
-        wrong: Wrong::File { reason, help: help.map(str::to_owned) },
+        wrong: Wrong::File {
+            reason,
+            help: help.map(str::to_owned),
+        },
     }
 }
 
@@ -57,9 +63,14 @@ pub fn read_text(path: &Path) -> Result<(String, String), Fault> {
         return Ok((name.clone(), text_of(&name, bytes)?));
     }
     let name = path.display().to_string();
-    let meta = fs::metadata(path).map_err(|e| file_fault(&name, format!("cannot be read: {}", reason(&e)), None))?;
+    let meta = fs::metadata(path)
+        .map_err(|e| file_fault(&name, format!("cannot be read: {}", reason(&e)), None))?;
     if meta.is_dir() {
-        return Err(file_fault(&name, "is a folder, not a file".to_owned(), None));
+        return Err(file_fault(
+            &name,
+            "is a folder, not a file".to_owned(),
+            None,
+        ));
     }
     if meta.len() > MOST_BYTES {
         return Err(file_fault(&name, too_large(Some(meta.len())), None));
@@ -85,14 +96,21 @@ fn reason(e: &std::io::Error) -> String {
 
 fn too_large(size: Option<u64>) -> String {
     let found = size.map_or_else(String::new, |s| format!("{} MB, and ", s / 1_000_000));
-    format!("is too large: {found}at most {} MB are read", MOST_BYTES / 1_000_000)
+    format!(
+        "is too large: {found}at most {} MB are read",
+        MOST_BYTES / 1_000_000
+    )
 }
 
 /// Reads a design and lays settings over it.
 pub fn design_tree(path: &Path, settings: &[String], faults: &Faults) -> Option<Node> {
     let (name, text) = read_text(path).map_err(|f| faults.push(f)).ok()?;
     if text.trim().is_empty() {
-        faults.push(file_fault(&name, "is empty".to_owned(), Some("begin with `injectance new vertical > first.toml`")));
+        faults.push(file_fault(
+            &name,
+            "is empty".to_owned(),
+            Some("begin with `injectance new vertical > first.toml`"),
+        ));
         return None;
     }
     let source: Arc<Source> = Source::new(name, text);
@@ -134,12 +152,22 @@ pub fn record_files(path: &Path, faults: &Faults) -> Vec<(String, String)> {
         .collect()
 }
 
-fn collect(path: &Path, depth: usize, seen: &mut BTreeSet<PathBuf>, into: &mut Vec<PathBuf>, faults: &Faults) {
+fn collect(
+    path: &Path,
+    depth: usize,
+    seen: &mut BTreeSet<PathBuf>,
+    into: &mut Vec<PathBuf>,
+    faults: &Faults,
+) {
     let name = path.display().to_string();
     let real = match fs::canonicalize(path) {
         Ok(real) => real,
         Err(e) => {
-            faults.push(file_fault(&name, format!("cannot be read: {}", reason(&e)), None));
+            faults.push(file_fault(
+                &name,
+                format!("cannot be read: {}", reason(&e)),
+                None,
+            ));
             return;
         }
     };
@@ -148,17 +176,29 @@ fn collect(path: &Path, depth: usize, seen: &mut BTreeSet<PathBuf>, into: &mut V
         return;
     }
     if !seen.insert(real) {
-        faults.push(file_fault(&name, "is a folder that contains itself by a link".to_owned(), Some("remove the link")));
+        faults.push(file_fault(
+            &name,
+            "is a folder that contains itself by a link".to_owned(),
+            Some("remove the link"),
+        ));
         return;
     }
     if depth > DEEPEST {
-        faults.push(file_fault(&name, format!("lies more than {DEEPEST} folders deep"), None));
+        faults.push(file_fault(
+            &name,
+            format!("lies more than {DEEPEST} folders deep"),
+            None,
+        ));
         return;
     }
     let entries = match fs::read_dir(path) {
         Ok(entries) => entries,
         Err(e) => {
-            faults.push(file_fault(&name, format!("cannot be read: {}", reason(&e)), None));
+            faults.push(file_fault(
+                &name,
+                format!("cannot be read: {}", reason(&e)),
+                None,
+            ));
             return;
         }
     };

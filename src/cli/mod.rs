@@ -24,7 +24,9 @@ pub fn run() -> Exit {
         Err(error) => {
             let asked = matches!(
                 error.kind(),
-                ErrorKind::DisplayHelp | ErrorKind::DisplayVersion | ErrorKind::DisplayHelpOnMissingArgumentOrSubcommand
+                ErrorKind::DisplayHelp
+                    | ErrorKind::DisplayVersion
+                    | ErrorKind::DisplayHelpOnMissingArgumentOrSubcommand
             );
             let text = error.render();
             let written = if asked {
@@ -32,7 +34,11 @@ pub fn run() -> Exit {
             } else {
                 std::io::stderr().write_all(text.to_string().as_bytes())
             };
-            return if asked { exit::of_write(&written, Exit::Answered) } else { Exit::BadInput };
+            return if asked {
+                exit::of_write(&written, Exit::Answered)
+            } else {
+                Exit::BadInput
+            };
         }
     };
     match arguments.command {

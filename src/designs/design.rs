@@ -71,7 +71,10 @@ fn conflict(place: &Place, field: &str, reason: &str, help: &str) -> Fault {
     Fault {
         place: Some(place.clone()),
         field: field.to_owned(),
-        wrong: Wrong::Conflict { reason: reason.to_owned(), help: Some(help.to_owned()) },
+        wrong: Wrong::Conflict {
+            reason: reason.to_owned(),
+            help: Some(help.to_owned()),
+        },
     }
 }
 
@@ -87,7 +90,10 @@ pub fn read_design(root: &Node, library: &Library, faults: &Faults) -> Option<De
     match top.table("layout") {
         Some(layout) => {
             if !layout.has("kind") {
-                layout.missing("kind", "`kind = \"vertical\"`: the current crosses the layers one after the other");
+                layout.missing(
+                    "kind",
+                    "`kind = \"vertical\"`: the current crosses the layers one after the other",
+                );
             }
             layout.word("kind", "layout", LAYOUTS);
             layout.finish();
@@ -97,8 +103,13 @@ pub fn read_design(root: &Node, library: &Library, faults: &Faults) -> Option<De
         }
         None => {}
     }
-    let goals = top.node("goal").map(|n| read_goals(n, faults)).unwrap_or_default();
-    let short = ["injector", "channel", "detector"].into_iter().find(|k| top.has(k));
+    let goals = top
+        .node("goal")
+        .map(|n| read_goals(n, faults))
+        .unwrap_or_default();
+    let short = ["injector", "channel", "detector"]
+        .into_iter()
+        .find(|k| top.has(k));
     let stack = match (short, top.has("stack")) {
         (Some(key), true) => {
             for k in ["injector", "channel", "detector", "stack", "ends"] {
@@ -164,8 +175,12 @@ fn check_states(top: &Reader<'_>, goals: &[Goal], parts: &[Part], faults: &Fault
     if ferromagnets().any(turns) && !ferromagnets().all(turns) {
         return;
     }
-    let help = "add a [detector], or in a [[stack]] one ferromagnet with `magnetization = \"free\"`";
-    for goal in goals.iter().filter(|g| g.target != Target::InjectedPolarization) {
+    let help =
+        "add a [detector], or in a [[stack]] one ferromagnet with `magnetization = \"free\"`";
+    for goal in goals
+        .iter()
+        .filter(|g| g.target != Target::InjectedPolarization)
+    {
         faults.push(conflict(
             &goal.place,
             &format!("goal.{}", goal.target.word()),
@@ -198,18 +213,34 @@ fn contact_side(
     library: &Library,
     faults: &Faults,
 ) -> (Option<LayerSpec>, Option<ContactSpec>) {
-    let ferromagnet = side
-        .node("ferromagnet")
-        .map(|n| read_layer(n, &format!("{path}.ferromagnet"), Role::ContactFerromagnet, library, faults));
+    let ferromagnet = side.node("ferromagnet").map(|n| {
+        read_layer(
+            n,
+            &format!("{path}.ferromagnet"),
+            Role::ContactFerromagnet,
+            library,
+            faults,
+        )
+    });
     if !side.has("ferromagnet") {
-        side.missing("ferromagnet", "for example `ferromagnet = { material = \"iron\", thickness = \"15 nm\" }`");
+        side.missing(
+            "ferromagnet",
+            "for example `ferromagnet = { material = \"iron\", thickness = \"15 nm\" }`",
+        );
     }
     let barrier = side
         .node("barrier")
         .map(|n| read_contact(n, &format!("{path}.barrier"), true, false, library, faults));
-    let interface = side
-        .node("interface")
-        .map(|n| read_contact(n, &format!("{path}.interface"), false, false, library, faults));
+    let interface = side.node("interface").map(|n| {
+        read_contact(
+            n,
+            &format!("{path}.interface"),
+            false,
+            false,
+            library,
+            faults,
+        )
+    });
     if barrier.is_some() && interface.is_some() {
         side.fault(
             "interface",
@@ -225,26 +256,38 @@ fn contact_side(
 
 fn short_form(top: &Reader<'_>, library: &Library, faults: &Faults) -> Option<Form> {
     let Some(injector) = top.table("injector") else {
-        top.missing("injector", "the ferromagnet that injects: `[injector]` with `ferromagnet = { … }`");
+        top.missing(
+            "injector",
+            "the ferromagnet that injects: `[injector]` with `ferromagnet = { … }`",
+        );
         top.node("channel");
         top.node("detector");
         return None;
     };
     let (injecting, first) = contact_side(&injector, "injector", library, faults);
-    let channel = top.node("channel").map(|n| read_layer(n, "channel", Role::Channel, library, faults));
+    let channel = top
+        .node("channel")
+        .map(|n| read_layer(n, "channel", Role::Channel, library, faults));
     if channel.is_none() {
-        top.missing("channel", "the layer that is injected into: `[channel]` with `material` or explicit numbers");
+        top.missing(
+            "channel",
+            "the layer that is injected into: `[channel]` with `material` or explicit numbers",
+        );
     }
     let detector = top.table("detector");
     let two = detector.is_some();
-    let (detecting, second) =
-        detector.map_or((None, None), |d| contact_side(&d, "detector", library, faults));
+    let (detecting, second) = detector.map_or((None, None), |d| {
+        contact_side(&d, "detector", library, faults)
+    });
     if two && detecting.is_none() {
         return None;
     }
     let (injecting, channel) = (injecting?, channel?);
     let end_of = |layer: &LayerSpec| {
-        layer.end.as_ref().map_or((EndWord::SemiInfinite, false), |e| (e.value, true))
+        layer
+            .end
+            .as_ref()
+            .map_or((EndWord::SemiInfinite, false), |e| (e.value, true))
     };
     let left = end_of(&injecting);
     let right = if let Some(detecting) = &detecting {
@@ -274,11 +317,18 @@ fn short_form(top: &Reader<'_>, library: &Library, faults: &Faults) -> Option<Fo
             }
         }
     };
-    for (layer, end) in [(&injecting, left), (detecting.as_ref().unwrap_or(&channel), right)] {
+    for (layer, end) in [
+        (&injecting, left),
+        (detecting.as_ref().unwrap_or(&channel), right),
+    ] {
         needs_thickness(layer, end.0, faults);
     }
     if two && channel.thickness.is_none() {
-        missing_thickness(&channel, "the channel between two contacts needs its thickness", faults);
+        missing_thickness(
+            &channel,
+            "the channel between two contacts needs its thickness",
+            faults,
+        );
     }
     let mut parts = vec![Part::Ferromagnet(injecting)];
     parts.extend(first.map(Part::Contact));
@@ -289,8 +339,18 @@ fn short_form(top: &Reader<'_>, library: &Library, faults: &Faults) -> Option<Fo
         layer.magnetization = Some(MagnetizationWord::Free);
         Part::Ferromagnet(layer)
     }));
-    let written = if two { Written::TwoContacts } else { Written::OneContact };
-    Some(Form { parts, channel: at, left, right, written })
+    let written = if two {
+        Written::TwoContacts
+    } else {
+        Written::OneContact
+    };
+    Some(Form {
+        parts,
+        channel: at,
+        left,
+        right,
+        written,
+    })
 }
 
 fn missing_thickness(layer: &LayerSpec, help: &str, faults: &Faults) {
@@ -359,26 +419,54 @@ fn long_form(top: &Reader<'_>, library: &Library, faults: &Faults) -> Option<For
             }
             continue;
         };
-        let Some(node) = entry.node(only) else { continue };
+        let Some(node) = entry.node(only) else {
+            continue;
+        };
         let inner = format!("{path}.{only}");
         parts.push(match *only {
-            "ferromagnet" => Part::Ferromagnet(read_layer(node, &inner, Role::StackFerromagnet, library, faults)),
+            "ferromagnet" => Part::Ferromagnet(read_layer(
+                node,
+                &inner,
+                Role::StackFerromagnet,
+                library,
+                faults,
+            )),
             "normal" => Part::Normal(read_layer(node, &inner, Role::StackNormal, library, faults)),
-            kind => Part::Contact(read_contact(node, &inner, kind == "barrier", true, library, faults)),
+            kind => Part::Contact(read_contact(
+                node,
+                &inner,
+                kind == "barrier",
+                true,
+                library,
+                faults,
+            )),
         });
     }
     let (left, right) = (words[0]?, words[1]?);
-    let place = top.key_place("stack").unwrap_or_else(|| top.place().clone());
+    let place = top
+        .key_place("stack")
+        .unwrap_or_else(|| top.place().clone());
     if !understood || faults.told("stack") {
         return None;
     }
     if parts.is_empty() {
-        faults.push(conflict(&place, "stack", "the stack has no layer", "add [[stack]] entries"));
+        faults.push(conflict(
+            &place,
+            "stack",
+            "the stack has no layer",
+            "add [[stack]] entries",
+        ));
         return None;
     }
     check_order(&parts, left, right, faults);
     let channel = channel_of(&parts, &place, faults)?;
-    Some(Form { parts, channel, left: (left, true), right: (right, true), written: Written::Stack })
+    Some(Form {
+        parts,
+        channel,
+        left: (left, true),
+        right: (right, true),
+        written: Written::Stack,
+    })
 }
 
 fn check_order(parts: &[Part], left: EndWord, right: EndWord, faults: &Faults) {
@@ -392,7 +480,10 @@ fn check_order(parts: &[Part], left: EndWord, right: EndWord, faults: &Faults) {
             ));
         }
     }
-    for (part, end, side) in [(parts.first(), left, "left"), (parts.last(), right, "right")] {
+    for (part, end, side) in [
+        (parts.first(), left, "left"),
+        (parts.last(), right, "right"),
+    ] {
         match part {
             Some(Part::Contact(contact)) => faults.push(conflict(
                 &contact.place,
@@ -400,20 +491,29 @@ fn check_order(parts: &[Part], left: EndWord, right: EndWord, faults: &Faults) {
                 &format!("the outermost element on the {side} is an interface"),
                 "a stack begins and ends with a layer",
             )),
-            Some(Part::Ferromagnet(layer) | Part::Normal(layer)) => needs_thickness(layer, end, faults),
+            Some(Part::Ferromagnet(layer) | Part::Normal(layer)) => {
+                needs_thickness(layer, end, faults)
+            }
             None => {}
         }
     }
-    for layer in parts.iter().skip(1).take(parts.len().saturating_sub(2)).filter_map(|p| match p {
-        Part::Ferromagnet(layer) | Part::Normal(layer) => Some(layer),
-        Part::Contact(_) => None,
-    }) {
+    for layer in parts
+        .iter()
+        .skip(1)
+        .take(parts.len().saturating_sub(2))
+        .filter_map(|p| match p {
+            Part::Ferromagnet(layer) | Part::Normal(layer) => Some(layer),
+            Part::Contact(_) => None,
+        })
+    {
         if layer.thickness.is_none() {
             missing_thickness(layer, "an inner layer needs its thickness", faults);
         }
     }
     for (i, part) in parts.iter().enumerate() {
-        let Part::Contact(contact) = part else { continue };
+        let Part::Contact(contact) = part else {
+            continue;
+        };
         let ferromagnet = |p: Option<&Part>| matches!(p, Some(Part::Ferromagnet(_)));
         let both = i > 0 && ferromagnet(parts.get(i - 1)) && ferromagnet(parts.get(i + 1));
         if both && contact.flips_with.is_none() {
@@ -430,14 +530,21 @@ fn check_order(parts: &[Part], left: EndWord, right: EndWord, faults: &Faults) {
 }
 
 fn channel_of(parts: &[Part], place: &Place, faults: &Faults) -> Option<usize> {
-    let normals: Vec<usize> = (0..parts.len()).filter(|i| matches!(parts[*i], Part::Normal(_))).collect();
+    let normals: Vec<usize> = (0..parts.len())
+        .filter(|i| matches!(parts[*i], Part::Normal(_)))
+        .collect();
     let marked: Vec<usize> = normals
         .iter()
         .copied()
         .filter(|i| matches!(&parts[*i], Part::Normal(l) if l.is_channel))
         .collect();
     if let Some(Part::Normal(second)) = marked.get(1).and_then(|i| parts.get(*i)) {
-        faults.push(conflict(&second.place, &second.path, "more than one layer is marked as the channel", "keep one `channel = true`"));
+        faults.push(conflict(
+            &second.place,
+            &second.path,
+            "more than one layer is marked as the channel",
+            "keep one `channel = true`",
+        ));
         return None;
     }
     let has_ferromagnet = parts.iter().any(|p| matches!(p, Part::Ferromagnet(_)));
@@ -450,7 +557,10 @@ fn channel_of(parts: &[Part], place: &Place, faults: &Faults) -> Option<usize> {
         ));
         return None;
     }
-    let first_ferromagnet = parts.iter().position(|p| matches!(p, Part::Ferromagnet(_))).unwrap_or(0);
+    let first_ferromagnet = parts
+        .iter()
+        .position(|p| matches!(p, Part::Ferromagnet(_)))
+        .unwrap_or(0);
     marked
         .first()
         .or_else(|| normals.iter().find(|i| between_states(parts, **i)))

@@ -30,7 +30,10 @@ impl Target {
     /// Name in a design.
     #[must_use]
     pub fn word(self) -> &'static str {
-        Self::WORDS.iter().find(|(_, t)| *t == self).map_or("", |(w, _)| w)
+        Self::WORDS
+            .iter()
+            .find(|(_, t)| *t == self)
+            .map_or("", |(w, _)| w)
     }
 
     /// Kind of quantity.
@@ -103,21 +106,28 @@ pub struct Goal {
     pub place: Place,
 }
 
-const STATES: &[(&str, GoalState)] =
-    &[("parallel", GoalState::Parallel), ("antiparallel", GoalState::Antiparallel)];
+const STATES: &[(&str, GoalState)] = &[
+    ("parallel", GoalState::Parallel),
+    ("antiparallel", GoalState::Antiparallel),
+];
 
 fn refuse(faults: &Faults, place: &Place, field: &str, reason: &str, help: &str) {
     faults.push(Fault {
         place: Some(place.clone()),
         field: field.to_owned(),
-        wrong: Wrong::Conflict { reason: reason.to_owned(), help: Some(help.to_owned()) },
+        wrong: Wrong::Conflict {
+            reason: reason.to_owned(),
+            help: Some(help.to_owned()),
+        },
     });
 }
 
 /// Reads the table of goals.
 pub fn read_goals(node: &Node, faults: &Faults) -> Vec<Goal> {
     let reader = Reader::new(node, "goal", faults);
-    let state = reader.word("state", "state", STATES).map_or(GoalState::Parallel, |w| w.value);
+    let state = reader
+        .word("state", "state", STATES)
+        .map_or(GoalState::Parallel, |w| w.value);
     let mut goals = Vec::new();
     for (key, key_place, node) in reader.entries() {
         if key == "state" {
@@ -141,7 +151,10 @@ pub fn read_goals(node: &Node, faults: &Faults) -> Vec<Goal> {
             faults.push(Fault {
                 place: Some(node.place.clone()),
                 field,
-                wrong: Wrong::Type { found: node.value.type_name(), expected: "a text such as \">= 10 %\"" },
+                wrong: Wrong::Type {
+                    found: node.value.type_name(),
+                    expected: "a text such as \">= 10 %\"",
+                },
             });
             continue;
         };
@@ -149,7 +162,11 @@ pub fn read_goals(node: &Node, faults: &Faults) -> Vec<Goal> {
             goals.push(Goal {
                 target: *target,
                 comparison,
-                state: if *target == Target::InjectedPolarization { state } else { GoalState::Parallel },
+                state: if *target == Target::InjectedPolarization {
+                    state
+                } else {
+                    GoalState::Parallel
+                },
                 text: text.clone(),
                 place: node.place.clone(),
             });
@@ -170,7 +187,13 @@ fn read_comparison(
             Ok(interval) => {
                 let (low, high) = (interval.low, interval.high);
                 if low < 0.0 {
-                    refuse(faults, &node.place, field, "absolute values are compared, so the lower end of a goal is not negative", "write, for example, \"1 .. 5 %\"");
+                    refuse(
+                        faults,
+                        &node.place,
+                        field,
+                        "absolute values are compared, so the lower end of a goal is not negative",
+                        "write, for example, \"1 .. 5 %\"",
+                    );
                     return None;
                 }
                 Some(Comparison::Between(low, high))
@@ -196,20 +219,44 @@ fn read_comparison(
     } else if let Some(r) = trimmed.strip_prefix('≤') {
         (false, trimmed.len() - r.len())
     } else {
-        refuse(faults, &node.place, field, "a goal begins with >= or <=, or is an interval", "write \">= 10 %\", \"<= 5 %\" or \"1 .. 5 %\"");
+        refuse(
+            faults,
+            &node.place,
+            field,
+            "a goal begins with >= or <=, or is an interval",
+            "write \">= 10 %\", \"<= 5 %\" or \"1 .. 5 %\"",
+        );
         return None;
     };
     let start = offset + skip;
     match read(&text[start..], kind, &Context::default()) {
-        Ok(Reading { si, spread: Spread::Exact, .. }) if si >= 0.0 => {
-            Some(if at_least { Comparison::AtLeast(si) } else { Comparison::AtMost(si) })
-        }
+        Ok(Reading {
+            si,
+            spread: Spread::Exact,
+            ..
+        }) if si >= 0.0 => Some(if at_least {
+            Comparison::AtLeast(si)
+        } else {
+            Comparison::AtMost(si)
+        }),
         Ok(Reading { si, .. }) if si < 0.0 => {
-            refuse(faults, &node.place, field, "absolute values are compared, so a goal is not negative", "write it without the minus sign");
+            refuse(
+                faults,
+                &node.place,
+                field,
+                "absolute values are compared, so a goal is not negative",
+                "write it without the minus sign",
+            );
             None
         }
         Ok(_) => {
-            refuse(faults, &node.place, field, "a goal is a plain number without spread", "write, for example, \">= 10 %\"");
+            refuse(
+                faults,
+                &node.place,
+                field,
+                "a goal is a plain number without spread",
+                "write, for example, \">= 10 %\"",
+            );
             None
         }
         Err(fault) => {

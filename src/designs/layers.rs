@@ -34,7 +34,10 @@ impl EndWord {
     /// The word.
     #[must_use]
     pub fn word(self) -> &'static str {
-        Self::WORDS.iter().find(|(_, e)| *e == self).map_or("", |(w, _)| w)
+        Self::WORDS
+            .iter()
+            .find(|(_, e)| *e == self)
+            .map_or("", |(w, _)| w)
     }
 }
 
@@ -171,7 +174,9 @@ pub fn known_material(
             let words: Vec<&str> = listed
                 .iter()
                 .filter(fits)
-                .flat_map(|l| std::iter::once(l.id.as_str()).chain(l.aliases.iter().map(String::as_str)))
+                .flat_map(|l| {
+                    std::iter::once(l.id.as_str()).chain(l.aliases.iter().map(String::as_str))
+                })
                 .collect();
             Wrong::UnknownWord {
                 what: "material",
@@ -181,7 +186,11 @@ pub fn known_material(
             }
         }
     };
-    faults.push(Fault { place: Some(name.place.clone()), field: format!("{path}.material"), wrong });
+    faults.push(Fault {
+        place: Some(name.place.clone()),
+        field: format!("{path}.material"),
+        wrong,
+    });
     None
 }
 
@@ -195,7 +204,13 @@ pub fn classes_of(role: Role) -> &'static [Class] {
 }
 
 /// Reads a layer.
-pub fn read_layer(node: &Node, path: &str, role: Role, library: &Library, faults: &Faults) -> LayerSpec {
+pub fn read_layer(
+    node: &Node,
+    path: &str,
+    role: Role,
+    library: &Library,
+    faults: &Faults,
+) -> LayerSpec {
     let r = Reader::new(node, path, faults);
     let plain = Context::default();
     let ferromagnet = matches!(role, Role::ContactFerromagnet | Role::StackFerromagnet);
@@ -205,17 +220,24 @@ pub fn read_layer(node: &Node, path: &str, role: Role, library: &Library, faults
     }
     let resistivity = r.quantity("resistivity", &kind::RESISTIVITY, &plain);
     let conductivity = r.quantity("conductivity", &kind::CONDUCTIVITY, &plain);
-    let bulk_asymmetry =
-        if ferromagnet { r.quantity("bulk_asymmetry", &kind::BULK_ASYMMETRY, &plain) } else { None };
-    let spin_diffusion_length =
-        r.quantity("spin_diffusion_length", &kind::SPIN_DIFFUSION_LENGTH, &plain);
+    let bulk_asymmetry = if ferromagnet {
+        r.quantity("bulk_asymmetry", &kind::BULK_ASYMMETRY, &plain)
+    } else {
+        None
+    };
+    let spin_diffusion_length = r.quantity(
+        "spin_diffusion_length",
+        &kind::SPIN_DIFFUSION_LENGTH,
+        &plain,
+    );
     let thickness = r.quantity("thickness", &kind::THICKNESS, &plain);
     let (mut doping, mut dopant, mut carrier_type) = (None, None, None);
     if !ferromagnet {
         doping = r.exact_quantity("doping", &kind::DOPING);
         dopant = r.text("dopant").map(|t| t.value);
-        carrier_type =
-            r.word("type", "carrier type", &[("n", "n"), ("p", "p")]).map(|w| w.value.to_owned());
+        carrier_type = r
+            .word("type", "carrier type", &[("n", "n"), ("p", "p")])
+            .map(|w| w.value.to_owned());
     }
     let end = if matches!(role, Role::ContactFerromagnet | Role::Channel) {
         r.word("end", "end", EndWord::WORDS)
@@ -223,7 +245,8 @@ pub fn read_layer(node: &Node, path: &str, role: Role, library: &Library, faults
         None
     };
     let magnetization = if role == Role::StackFerromagnet {
-        r.word("magnetization", "magnetization", MAGNETIZATIONS).map(|w| w.value)
+        r.word("magnetization", "magnetization", MAGNETIZATIONS)
+            .map(|w| w.value)
     } else {
         None
     };
@@ -268,7 +291,10 @@ pub fn read_layer(node: &Node, path: &str, role: Role, library: &Library, faults
             given,
             Wrong::Conflict {
                 reason: format!("`{given}` is overridden without `{other}`"),
-                help: Some("β and λ of a ferromagnet are a pair from one technique: give both, or neither".to_owned()),
+                help: Some(
+                    "β and λ of a ferromagnet are a pair from one technique: give both, or neither"
+                        .to_owned(),
+                ),
             },
         );
     }
@@ -297,7 +323,10 @@ fn monolayer(library: &Library, material: Option<&Placed<String>>, faults: &Faul
         .and_then(|m| library.id_of(&m.value))
         .and_then(|id| library.material(&id, faults))
         .and_then(|m| {
-            m.values.iter().find(|v| v.property.name == "monolayer").map(|v| v.reading.si)
+            m.values
+                .iter()
+                .find(|v| v.property.name == "monolayer")
+                .map(|v| v.reading.si)
         });
     Context { monolayer: height }
 }
@@ -318,8 +347,11 @@ pub fn read_contact(
         known_material(library, name, path, &[Class::Barrier], faults);
     }
     let resistance_area = r.quantity("resistance_area", &kind::RESISTANCE_AREA, &plain);
-    let interface_spin_resistance =
-        r.quantity("interface_spin_resistance", &kind::INTERFACE_SPIN_RESISTANCE, &plain);
+    let interface_spin_resistance = r.quantity(
+        "interface_spin_resistance",
+        &kind::INTERFACE_SPIN_RESISTANCE,
+        &plain,
+    );
     let interface_asymmetry = r.quantity("interface_asymmetry", &kind::INTERFACE_ASYMMETRY, &plain);
     let spin_memory_loss = r.quantity("spin_memory_loss", &kind::SPIN_MEMORY_LOSS, &plain);
     let thickness = if is_barrier {
@@ -329,7 +361,12 @@ pub fn read_contact(
         None
     };
     let flips_with = if in_stack {
-        r.word("flips_with", "side", &[("left", Side::Left), ("right", Side::Right)]).map(|w| w.value)
+        r.word(
+            "flips_with",
+            "side",
+            &[("left", Side::Left), ("right", Side::Right)],
+        )
+        .map(|w| w.value)
     } else {
         None
     };

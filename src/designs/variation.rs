@@ -70,19 +70,27 @@ pub const FIELDS: &[&str] = &[
 ];
 
 fn fault(setting: &Setting, wrong: Wrong) -> Fault {
-    Fault { place: Some(setting.node.place.clone()), field: setting.path.join("."), wrong }
+    Fault {
+        place: Some(setting.node.place.clone()),
+        field: setting.path.join("."),
+        wrong,
+    }
 }
 
 /// A number with six significant digits, as text without loss on reading it again.
 fn six_digits(x: f64) -> String {
     let text = format!("{x:.5e}");
-    let Some((mantissa, exponent)) = text.split_once('e') else { return text };
+    let Some((mantissa, exponent)) = text.split_once('e') else {
+        return text;
+    };
     let mantissa = if mantissa.contains('.') {
         mantissa.trim_end_matches('0').trim_end_matches('.')
     } else {
         mantissa
     };
-    let Ok(n) = exponent.parse::<i32>() else { return text };
+    let Ok(n) = exponent.parse::<i32>() else {
+        return text;
+    };
     if (-4..6).contains(&n) {
         let plain = format!("{x:.*}", usize::try_from((5 - n).max(0)).unwrap_or(0));
         let plain = if plain.contains('.') {
@@ -100,7 +108,11 @@ fn six_digits(x: f64) -> String {
 /// # Errors
 /// The text is not of the form, the field is not one that can be varied, the range is not one, or the
 /// number of points is not between 2 and [`MOST_POINTS`].
-pub fn read_variation(text: &str, points: usize, spacing: Option<Spacing>) -> Result<Variation, Fault> {
+pub fn read_variation(
+    text: &str,
+    points: usize,
+    spacing: Option<Spacing>,
+) -> Result<Variation, Fault> {
     let setting = read_setting("--vary", text)?;
     let path = setting.path.join(".");
     let key = setting.path.last().map_or("", String::as_str);
@@ -119,7 +131,10 @@ pub fn read_variation(text: &str, points: usize, spacing: Option<Spacing>) -> Re
     let Value::Text(range) = &setting.node.value else {
         return Err(fault(
             &setting,
-            Wrong::Type { found: setting.node.value.type_name(), expected: "a text such as \"1 .. 1e4 Ω µm²\"" },
+            Wrong::Type {
+                found: setting.node.value.type_name(),
+                expected: "a text such as \"1 .. 1e4 Ω µm²\"",
+            },
         ));
     };
     if !(2..=MOST_POINTS).contains(&points) {
@@ -136,9 +151,7 @@ pub fn read_variation(text: &str, points: usize, spacing: Option<Spacing>) -> Re
         field: setting.path.join("."),
         wrong: Wrong::quantity(f, kind),
     })?;
-    let number = |t: &str| {
-        t.replace(['\u{2212}'], "-").parse::<f64>().ok()
-    };
+    let number = |t: &str| t.replace(['\u{2212}'], "-").parse::<f64>().ok();
     let (Some(low), Some(high)) = (number(&interval.low_text), number(&interval.high_text)) else {
         return Err(fault(
             &setting,
@@ -148,8 +161,11 @@ pub fn read_variation(text: &str, points: usize, spacing: Option<Spacing>) -> Re
             },
         ));
     };
-    let automatic =
-        if low > 0.0 && high / low >= 10.0 { Spacing::Logarithmic } else { Spacing::Linear };
+    let automatic = if low > 0.0 && high / low >= 10.0 {
+        Spacing::Logarithmic
+    } else {
+        Spacing::Linear
+    };
     let spacing = spacing.unwrap_or(automatic);
     if spacing == Spacing::Logarithmic && low <= 0.0 {
         return Err(fault(
@@ -174,7 +190,11 @@ pub fn read_variation(text: &str, points: usize, spacing: Option<Spacing>) -> Re
                     Spacing::Logarithmic => low * (high / low).powf(f),
                 })
             };
-            if interval.unit_text.is_empty() { number } else { format!("{number} {}", interval.unit_text) }
+            if interval.unit_text.is_empty() {
+                number
+            } else {
+                format!("{number} {}", interval.unit_text)
+            }
         })
         .collect();
     let settings = texts
@@ -182,8 +202,17 @@ pub fn read_variation(text: &str, points: usize, spacing: Option<Spacing>) -> Re
         .map(|t| Setting {
             path: setting.path.clone(),
             path_place: setting.path_place.clone(),
-            node: Node { value: Value::Text(t.clone()), place: setting.node.place.clone() },
+            node: Node {
+                value: Value::Text(t.clone()),
+                place: setting.node.place.clone(),
+            },
         })
         .collect();
-    Ok(Variation { path, kind, points: texts, settings, spacing })
+    Ok(Variation {
+        path,
+        kind,
+        points: texts,
+        settings,
+        spacing,
+    })
 }

@@ -62,7 +62,10 @@ impl InputTable {
     pub fn add<Q: Measured>(&mut self, input: Input) -> Slot<Q> {
         debug_assert_eq!(Q::DIMENSION, input.kind.dimension, "{}", input.name);
         self.inputs.push(input);
-        Slot { column: self.inputs.len() - 1, kind: PhantomData }
+        Slot {
+            column: self.inputs.len() - 1,
+            kind: PhantomData,
+        }
     }
 
     /// All inputs, in the order of the columns.
@@ -101,7 +104,10 @@ impl InputTable {
         let mut row = self.central();
         for column in columns {
             let input = self.inputs.get(*column)?;
-            if matches!(input.reading.spread, Spread::Exact | Spread::Unknown | Spread::Bound { .. }) {
+            if matches!(
+                input.reading.spread,
+                Spread::Exact | Spread::Unknown | Spread::Bound { .. }
+            ) {
                 return None;
             }
             let value = input.reading.spread.shifted(input.reading.si, sigmas);

@@ -303,15 +303,21 @@ impl Vertical {
         };
         Layer {
             resistivity,
-            asymmetry: plan.asymmetry.map_or(BulkAsymmetry::from_si(0.0), |s| row.get(s)),
+            asymmetry: plan
+                .asymmetry
+                .map_or(BulkAsymmetry::from_si(0.0), |s| row.get(s)),
             length,
-            thickness: plan.thickness.map_or(Thickness::from_si(f64::INFINITY), |s| row.get(s)),
+            thickness: plan
+                .thickness
+                .map_or(Thickness::from_si(f64::INFINITY), |s| row.get(s)),
             magnetization: plan.magnetization,
         }
     }
 
     fn interface(plan: &InterfacePlan, row: Row<'_>) -> Interface {
-        let asymmetry = plan.asymmetry.map_or(InterfaceAsymmetry::from_si(0.0), |s| row.get(s));
+        let asymmetry = plan
+            .asymmetry
+            .map_or(InterfaceAsymmetry::from_si(0.0), |s| row.get(s));
         let spin_resistance = match plan.resistance {
             InterfaceResistancePlan::Zero => InterfaceSpinResistance::from_si(0.0),
             InterfaceResistancePlan::ResistanceArea(slot) => {
@@ -322,7 +328,9 @@ impl Vertical {
         Interface {
             spin_resistance,
             asymmetry,
-            memory_loss: plan.memory_loss.map_or(SpinMemoryLoss::from_si(0.0), |s| row.get(s)),
+            memory_loss: plan
+                .memory_loss
+                .map_or(SpinMemoryLoss::from_si(0.0), |s| row.get(s)),
             magnetization: plan.magnetization,
         }
     }
@@ -368,13 +376,20 @@ impl Vertical {
         let face = self.injector_face();
         let at = |solution: &Solution| {
             solution.faces.get(face).map_or(
-                (CurrentSpinPolarization::from_si(0.0), ResistanceTimesArea::from_si(0.0)),
+                (
+                    CurrentSpinPolarization::from_si(0.0),
+                    ResistanceTimesArea::from_si(0.0),
+                ),
                 |f| (f.polarization, f.accumulation_per_current_density),
             )
         };
         let parallel = stack.solve(State::Parallel);
         let (p, u) = at(&parallel);
-        let (pa, ua) = if self.has_two_states { at(&stack.solve(State::Antiparallel)) } else { (p, u) };
+        let (pa, ua) = if self.has_two_states {
+            at(&stack.solve(State::Antiparallel))
+        } else {
+            (p, u)
+        };
         let change = stack.resistance_area_change();
         Outcome {
             polarization: p,
@@ -383,7 +398,9 @@ impl Vertical {
             accumulation_antiparallel: ua,
             resistance_area: parallel.resistance_area,
             resistance_area_change: change,
-            magnetoresistance: Magnetoresistance::from_si(change.si() / parallel.resistance_area.si()),
+            magnetoresistance: Magnetoresistance::from_si(
+                change.si() / parallel.resistance_area.si(),
+            ),
         }
     }
 
@@ -428,7 +445,10 @@ impl Vertical {
     pub fn states_asymmetry(&self, element: usize) -> bool {
         matches!(
             self.elements.get(element),
-            Some(ElementPlan::Interface(InterfacePlan { asymmetry: Some(_), .. }))
+            Some(ElementPlan::Interface(InterfacePlan {
+                asymmetry: Some(_),
+                ..
+            }))
         )
     }
 }
@@ -437,7 +457,9 @@ impl Vertical {
     /// The two layers that an interface element stands between.
     #[must_use]
     pub fn neighbours(&self, element: usize) -> [Position; 2] {
-        let left = element.checked_sub(1).map_or(Position::LeftEnd, Position::Element);
+        let left = element
+            .checked_sub(1)
+            .map_or(Position::LeftEnd, Position::Element);
         let right = if element + 1 < self.elements.len() {
             Position::Element(element + 1)
         } else {
@@ -468,7 +490,8 @@ impl Vertical {
     /// Whether a ferromagnet stands at a position.
     #[must_use]
     pub fn is_ferromagnet(&self, at: Position) -> bool {
-        self.layer_plan(at).is_some_and(|plan| plan.asymmetry.is_some())
+        self.layer_plan(at)
+            .is_some_and(|plan| plan.asymmetry.is_some())
     }
 
     /// Every layer from left to right, end media included.

@@ -19,7 +19,10 @@ impl Source {
     /// A text with its name.
     #[must_use]
     pub fn new(name: impl Into<String>, text: impl Into<String>) -> Arc<Self> {
-        Arc::new(Self { name: name.into(), text: text.into() })
+        Arc::new(Self {
+            name: name.into(),
+            text: text.into(),
+        })
     }
 }
 
@@ -37,7 +40,11 @@ impl Place {
     #[must_use]
     pub fn line(&self) -> usize {
         let end = self.span.start.min(self.source.text.len());
-        self.source.text.as_bytes()[..end].iter().filter(|b| **b == b'\n').count() + 1
+        self.source.text.as_bytes()[..end]
+            .iter()
+            .filter(|b| **b == b'\n')
+            .count()
+            + 1
     }
 }
 
@@ -119,7 +126,10 @@ impl Wrong {
     /// A quantity that cannot be read, with an example of its kind.
     #[must_use]
     pub fn quantity(fault: ReadFault, kind: &Kind) -> Self {
-        Self::Quantity { fault, example: kind.examples.first().copied().unwrap_or("1") }
+        Self::Quantity {
+            fault,
+            example: kind.examples.first().copied().unwrap_or("1"),
+        }
     }
 }
 

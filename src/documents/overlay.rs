@@ -18,11 +18,16 @@ pub struct Setting {
 
 fn fault(source: &Arc<Source>, span: std::ops::Range<usize>, reason: &str) -> Fault {
     Fault {
-        place: Some(Place { source: Arc::clone(source), span }),
+        place: Some(Place {
+            source: Arc::clone(source),
+            span,
+        }),
         field: String::new(),
         wrong: Wrong::Conflict {
             reason: reason.to_owned(),
-            help: Some("write it as PATH=VALUE, for example channel.thickness=\"40 nm\"".to_owned()),
+            help: Some(
+                "write it as PATH=VALUE, for example channel.thickness=\"40 nm\"".to_owned(),
+            ),
         },
     }
 }
@@ -35,28 +40,47 @@ fn fault(source: &Arc<Source>, span: std::ops::Range<usize>, reason: &str) -> Fa
 pub fn read_setting(option: &str, text: &str) -> Result<Setting, Fault> {
     let source = Source::new(format!("{option} {text}"), text);
     let Some(equals) = text.find('=') else {
-        return Err(fault(&source, 0..text.len(), "there is no `=` between path and value"));
+        return Err(fault(
+            &source,
+            0..text.len(),
+            "there is no `=` between path and value",
+        ));
     };
     let path_text = text[..equals].trim_end();
     let path: Vec<String> = path_text.split('.').map(|k| k.trim().to_owned()).collect();
     if path.iter().any(String::is_empty) {
-        return Err(fault(&source, 0..equals.max(1).min(text.len()), "the path before `=` has an empty part"));
+        return Err(fault(
+            &source,
+            0..equals.max(1).min(text.len()),
+            "the path before `=` has an empty part",
+        ));
     }
     let start = equals + 1 + text[equals + 1..].len() - text[equals + 1..].trim_start().len();
     let raw = text[start..].trim_end();
     let span = start..start + raw.len();
-    let place = Place { source: Arc::clone(&source), span };
+    let place = Place {
+        source: Arc::clone(&source),
+        span,
+    };
     let value = toml_value(raw).unwrap_or_else(|| Value::Text(raw.to_owned()));
     Ok(Setting {
         path,
-        path_place: Place { source: Arc::clone(&source), span: 0..path_text.len() },
-        node: Node { value: relocated(value, &place), place },
+        path_place: Place {
+            source: Arc::clone(&source),
+            span: 0..path_text.len(),
+        },
+        node: Node {
+            value: relocated(value, &place),
+            place,
+        },
     })
 }
 
 fn toml_value(raw: &str) -> Option<Value> {
     let line = Source::new("", format!("v={raw}"));
-    let Value::Table(entries) = parse(&line).ok()?.value else { return None };
+    let Value::Table(entries) = parse(&line).ok()?.value else {
+        return None;
+    };
     match entries.as_slice() {
         [only] if only.key == "v" => Some(only.node.value.clone()),
         _ => None,
@@ -65,13 +89,20 @@ fn toml_value(raw: &str) -> Option<Value> {
 
 /// Inner places of a value that was parsed out of a made-up line all become the place of the option.
 fn relocated(value: Value, place: &Place) -> Value {
-    let inner = |node: Node| Node { value: relocated(node.value, place), place: place.clone() };
+    let inner = |node: Node| Node {
+        value: relocated(node.value, place),
+        place: place.clone(),
+    };
     match value {
         Value::List(items) => Value::List(items.into_iter().map(inner).collect()),
         Value::Table(entries) => Value::Table(
             entries
                 .into_iter()
-                .map(|e| Entry { key: e.key, key_place: place.clone(), node: inner(e.node) })
+                .map(|e| Entry {
+                    key: e.key,
+                    key_place: place.clone(),
+                    node: inner(e.node),
+                })
                 .collect(),
         ),
         other => other,
@@ -116,7 +147,10 @@ fn through(setting: &Setting, depth: usize, found: &str) -> Fault {
         place: Some(setting.path_place.clone()),
         field: setting.path.join("."),
         wrong: Wrong::Conflict {
-            reason: format!("`{}` is {found}, not a table", setting.path[..depth].join(".")),
+            reason: format!(
+                "`{}` is {found}, not a table",
+                setting.path[..depth].join(".")
+            ),
             help: None,
         },
     }
@@ -136,7 +170,10 @@ fn step<'a>(
                     entries.push(Entry {
                         key: key.to_owned(),
                         key_place: setting.path_place.clone(),
-                        node: Node { value: Value::Table(Vec::new()), place: setting.path_place.clone() },
+                        node: Node {
+                            value: Value::Table(Vec::new()),
+                            place: setting.path_place.clone(),
+                        },
                     });
                     entries.len() - 1
                 }

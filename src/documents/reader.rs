@@ -30,7 +30,9 @@ impl Faults {
         let mut all = std::mem::take(&mut *self.0.borrow_mut());
         all.sort_by(|a, b| {
             let key = |f: &Fault| {
-                f.place.as_ref().map_or((String::new(), 0), |p| (p.source.name.clone(), p.span.start))
+                f.place.as_ref().map_or((String::new(), 0), |p| {
+                    (p.source.name.clone(), p.span.start)
+                })
             };
             key(a).cmp(&key(b))
         });
@@ -76,16 +78,28 @@ impl<'a> Reader<'a> {
             faults.push(Fault {
                 place: Some(node.place.clone()),
                 field: path.to_owned(),
-                wrong: Wrong::Type { found: node.value.type_name(), expected: "a table" },
+                wrong: Wrong::Type {
+                    found: node.value.type_name(),
+                    expected: "a table",
+                },
             });
         }
-        Self { node, path: path.to_owned(), faults: faults.clone(), asked: RefCell::default() }
+        Self {
+            node,
+            path: path.to_owned(),
+            faults: faults.clone(),
+            asked: RefCell::default(),
+        }
     }
 
     /// Path of a key under this table.
     #[must_use]
     pub fn path_of(&self, key: &str) -> String {
-        if self.path.is_empty() { key.to_owned() } else { format!("{}.{key}", self.path) }
+        if self.path.is_empty() {
+            key.to_owned()
+        } else {
+            format!("{}.{key}", self.path)
+        }
     }
 
     /// Place of the whole table.
@@ -96,8 +110,15 @@ impl<'a> Reader<'a> {
 
     /// Adds a fault at a key of this table, at its value if it is there, else at the table.
     pub fn fault(&self, key: &str, wrong: Wrong) {
-        let place = self.node.get(key).map_or(&self.node.place, |e| &e.node.place);
-        self.faults.push(Fault { place: Some(place.clone()), field: self.path_of(key), wrong });
+        let place = self
+            .node
+            .get(key)
+            .map_or(&self.node.place, |e| &e.node.place);
+        self.faults.push(Fault {
+            place: Some(place.clone()),
+            field: self.path_of(key),
+            wrong,
+        });
     }
 
     /// Whether the key is there, without counting it as read.
@@ -122,7 +143,10 @@ impl<'a> Reader<'a> {
         self.faults.push(Fault {
             place: Some(node.place.clone()),
             field: self.path_of(key),
-            wrong: Wrong::Type { found: node.value.type_name(), expected },
+            wrong: Wrong::Type {
+                found: node.value.type_name(),
+                expected,
+            },
         });
     }
 
@@ -130,7 +154,10 @@ impl<'a> Reader<'a> {
     pub fn text(&self, key: &'static str) -> Option<Placed<String>> {
         let node = self.node(key)?;
         if let Value::Text(text) = &node.value {
-            Some(Placed { value: text.clone(), place: node.place.clone() })
+            Some(Placed {
+                value: text.clone(),
+                place: node.place.clone(),
+            })
         } else {
             self.wrong_type(key, node, "a text");
             None
@@ -155,7 +182,10 @@ impl<'a> Reader<'a> {
         self.faults.push(Fault {
             place: Some(self.node.place.clone()),
             field: self.path_of(key),
-            wrong: Wrong::Missing { key: key.to_owned(), help: help.to_owned() },
+            wrong: Wrong::Missing {
+                key: key.to_owned(),
+                help: help.to_owned(),
+            },
         });
     }
 
@@ -168,7 +198,10 @@ impl<'a> Reader<'a> {
     ) -> Option<Placed<T>> {
         let text = self.text(key)?;
         if let Some((_, found)) = words.iter().find(|(w, _)| *w == text.value) {
-            return Some(Placed { value: *found, place: text.place });
+            return Some(Placed {
+                value: *found,
+                place: text.place,
+            });
         }
         self.faults.push(Fault {
             place: Some(text.place),
@@ -200,7 +233,10 @@ impl<'a> Reader<'a> {
             }
         };
         match reading {
-            Ok(value) => Some(Placed { value, place: node.place.clone() }),
+            Ok(value) => Some(Placed {
+                value,
+                place: node.place.clone(),
+            }),
             Err(fault) => {
                 self.faults.push(Fault {
                     place: Some(node.inside(fault.at.clone())),
@@ -213,7 +249,11 @@ impl<'a> Reader<'a> {
     }
 
     /// A quantity that takes no spread: it decides which records are chosen, or only scales an answer.
-    pub fn exact_quantity(&self, key: &'static str, kind: &'static Kind) -> Option<Placed<Reading>> {
+    pub fn exact_quantity(
+        &self,
+        key: &'static str,
+        kind: &'static Kind,
+    ) -> Option<Placed<Reading>> {
         let placed = self.quantity(key, kind, &Context::default())?;
         if placed.value.spread == Spread::Exact {
             return Some(placed);
@@ -223,7 +263,10 @@ impl<'a> Reader<'a> {
             field: self.path_of(key),
             wrong: Wrong::Conflict {
                 reason: format!("`{key}` takes no spread and no bound"),
-                help: Some(format!("write a plain value, for example \"{}\"", kind.examples.first().copied().unwrap_or("1"))),
+                help: Some(format!(
+                    "write a plain value, for example \"{}\"",
+                    kind.examples.first().copied().unwrap_or("1")
+                )),
             },
         });
         None
@@ -242,7 +285,9 @@ impl<'a> Reader<'a> {
 
     /// A list of texts; absent reads as empty.
     pub fn texts(&self, key: &'static str) -> Vec<Placed<String>> {
-        let Some(node) = self.node(key) else { return Vec::new() };
+        let Some(node) = self.node(key) else {
+            return Vec::new();
+        };
         let Value::List(items) = &node.value else {
             self.wrong_type(key, node, "a list of texts");
             return Vec::new();
@@ -251,7 +296,10 @@ impl<'a> Reader<'a> {
             .iter()
             .filter_map(|item| {
                 if let Value::Text(text) = &item.value {
-                    Some(Placed { value: text.clone(), place: item.place.clone() })
+                    Some(Placed {
+                        value: text.clone(),
+                        place: item.place.clone(),
+                    })
                 } else {
                     self.wrong_type(key, item, "a text");
                     None
@@ -268,7 +316,9 @@ impl<'a> Reader<'a> {
 
     /// A list of tables; absent reads as empty.
     pub fn tables(&self, key: &'static str) -> Vec<Reader<'a>> {
-        let Some(node) = self.node(key) else { return Vec::new() };
+        let Some(node) = self.node(key) else {
+            return Vec::new();
+        };
         let Value::List(items) = &node.value else {
             self.wrong_type(key, node, "a list of tables");
             return Vec::new();
@@ -276,7 +326,13 @@ impl<'a> Reader<'a> {
         items
             .iter()
             .enumerate()
-            .map(|(i, item)| Reader::new(item, &format!("{}.{}", self.path_of(key), i + 1), &self.faults))
+            .map(|(i, item)| {
+                Reader::new(
+                    item,
+                    &format!("{}.{}", self.path_of(key), i + 1),
+                    &self.faults,
+                )
+            })
             .collect()
     }
 
@@ -290,9 +346,10 @@ impl<'a> Reader<'a> {
     #[must_use]
     pub fn entries(&self) -> Vec<(&'a str, &'a Place, &'a Node)> {
         match &self.node.value {
-            Value::Table(entries) => {
-                entries.iter().map(|e| (e.key.as_str(), &e.key_place, &e.node)).collect()
-            }
+            Value::Table(entries) => entries
+                .iter()
+                .map(|e| (e.key.as_str(), &e.key_place, &e.node))
+                .collect(),
             _ => Vec::new(),
         }
     }

@@ -74,12 +74,14 @@ impl Node {
     /// escapes; otherwise the place of the whole literal.
     #[must_use]
     pub fn inside(&self, at: Option<std::ops::Range<usize>>) -> Place {
-        let (Some(at), Value::Text(text)) = (at, &self.value) else { return self.place.clone() };
+        let (Some(at), Value::Text(text)) = (at, &self.value) else {
+            return self.place.clone();
+        };
         let whole = &self.place.span;
         let literal = self.place.source.text.get(whole.clone()).unwrap_or("");
-        let quote = [3_usize, 1, 0]
-            .into_iter()
-            .find(|n| literal.len() == text.len() + 2 * n && literal.get(*n..literal.len() - n) == Some(text));
+        let quote = [3_usize, 1, 0].into_iter().find(|n| {
+            literal.len() == text.len() + 2 * n && literal.get(*n..literal.len() - n) == Some(text)
+        });
         match quote {
             Some(n) if at.end <= text.len() => Place {
                 source: Arc::clone(&self.place.source),
@@ -99,21 +101,37 @@ pub fn parse(source: &Arc<Source>) -> Result<Node, Vec<Fault>> {
     if !errors.is_empty() {
         // The first of each line: what follows on it is mostly said of the same slip.
         let mut lines = BTreeSet::new();
-        let line = |at: usize| source.text.as_bytes().iter().take(at).filter(|b| **b == b'\n').count();
+        let line = |at: usize| {
+            source
+                .text
+                .as_bytes()
+                .iter()
+                .take(at)
+                .filter(|b| **b == b'\n')
+                .count()
+        };
         return Err(errors
             .into_iter()
             .filter(|e| lines.insert(e.span().map(|span| line(span.start))))
             .map(|e| Fault {
-                place: e.span().map(|span| Place { source: Arc::clone(source), span }),
+                place: e.span().map(|span| Place {
+                    source: Arc::clone(source),
+                    span,
+                }),
                 field: String::new(),
-                wrong: Wrong::Syntax { reason: e.message().to_owned() },
+                wrong: Wrong::Syntax {
+                    reason: e.message().to_owned(),
+                },
             })
             .collect());
     }
     let span = 0..source.text.len();
     Ok(Node {
         value: table_of(source, table.into_inner()),
-        place: Place { source: Arc::clone(source), span },
+        place: Place {
+            source: Arc::clone(source),
+            span,
+        },
     })
 }
 
@@ -122,7 +140,10 @@ fn table_of(source: &Arc<Source>, table: DeTable<'_>) -> Value {
         .into_iter()
         .map(|(key, value)| Entry {
             key: key.get_ref().to_string(),
-            key_place: Place { source: Arc::clone(source), span: key.span() },
+            key_place: Place {
+                source: Arc::clone(source),
+                span: key.span(),
+            },
             node: node_of(source, value),
         })
         .collect();
@@ -131,18 +152,24 @@ fn table_of(source: &Arc<Source>, table: DeTable<'_>) -> Value {
 }
 
 fn node_of(source: &Arc<Source>, value: Spanned<DeValue<'_>>) -> Node {
-    let place = Place { source: Arc::clone(source), span: value.span() };
+    let place = Place {
+        source: Arc::clone(source),
+        span: value.span(),
+    };
     let value = match value.into_inner() {
         DeValue::String(text) => Value::Text(text.into_owned()),
-        DeValue::Integer(i) => Value::Number(
-            i64::from_str_radix(i.as_str(), i.radix()).map_or(f64::NAN, |n| n as f64),
-        ),
+        DeValue::Integer(i) => {
+            Value::Number(i64::from_str_radix(i.as_str(), i.radix()).map_or(f64::NAN, |n| n as f64))
+        }
         DeValue::Float(f) => Value::Number(f.as_str().parse().unwrap_or(f64::NAN)),
         DeValue::Boolean(b) => Value::Flag(b),
         DeValue::Datetime(_) => Value::Date,
-        DeValue::Array(items) => {
-            Value::List(items.into_iter().map(|item| node_of(source, item)).collect())
-        }
+        DeValue::Array(items) => Value::List(
+            items
+                .into_iter()
+                .map(|item| node_of(source, item))
+                .collect(),
+        ),
         DeValue::Table(table) => table_of(source, table),
     };
     Node { value, place }

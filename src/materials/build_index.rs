@@ -10,8 +10,9 @@ use std::path::{Path, PathBuf};
 use std::{env, fs};
 
 fn toml_files(folder: &Path, into: &mut Vec<PathBuf>) -> std::io::Result<()> {
-    let mut entries: Vec<PathBuf> =
-        fs::read_dir(folder)?.map(|e| e.map(|e| e.path())).collect::<Result<_, _>>()?;
+    let mut entries: Vec<PathBuf> = fs::read_dir(folder)?
+        .map(|e| e.map(|e| e.path()))
+        .collect::<Result<_, _>>()?;
     entries.sort();
     for path in entries {
         if path.is_dir() {
@@ -24,11 +25,18 @@ fn toml_files(folder: &Path, into: &mut Vec<PathBuf>) -> std::io::Result<()> {
 }
 
 fn head_value(text: &str, key: &str) -> Option<String> {
-    let start = text.lines().position(|l| l.starts_with("[material]") || l.starts_with("[interface]"))?;
+    let start = text
+        .lines()
+        .position(|l| l.starts_with("[material]") || l.starts_with("[interface]"))?;
     text.lines()
         .skip(start + 1)
         .take_while(|l| !l.starts_with('['))
-        .find_map(|l| l.strip_prefix(key)?.trim_start().strip_prefix('=').map(str::trim))
+        .find_map(|l| {
+            l.strip_prefix(key)?
+                .trim_start()
+                .strip_prefix('=')
+                .map(str::trim)
+        })
         .map(|v| v.split(" #").next().unwrap_or(v).trim().to_owned())
 }
 
@@ -58,7 +66,10 @@ fn main() -> Result<(), Box<dyn std::error::Error>> {
     let mut out = String::from("pub(crate) static SHIPPED: &[ShippedFile] = &[\n");
     for path in files {
         let text = fs::read_to_string(&path)?;
-        let inside = path.strip_prefix(&root)?.to_string_lossy().replace('\\', "/");
+        let inside = path
+            .strip_prefix(&root)?
+            .to_string_lossy()
+            .replace('\\', "/");
         println!("cargo::rerun-if-changed={inside}");
         let role = if text.lines().any(|l| l.starts_with("[material]")) {
             format!(
@@ -84,6 +95,9 @@ fn main() -> Result<(), Box<dyn std::error::Error>> {
         )?;
     }
     out.push_str("];\npub(crate) static REFERENCES: &str = include_str!(concat!(env!(\"CARGO_MANIFEST_DIR\"), \"/materials/references.bib\"));\n");
-    fs::write(PathBuf::from(env::var("OUT_DIR")?).join("library_index.rs"), out)?;
+    fs::write(
+        PathBuf::from(env::var("OUT_DIR")?).join("library_index.rs"),
+        out,
+    )?;
     Ok(())
 }

@@ -6,8 +6,8 @@ use std::sync::Arc;
 use crate::documents::fault::{Fault, Place, Source, Wrong, nearest};
 use crate::documents::reader::Faults;
 
-use super::library::{Library, commons_of_interface, commons_of_material, parse_text};
 use super::file::Content;
+use super::library::{Library, commons_of_interface, commons_of_material, parse_text};
 use super::record::{Common, InterfaceEntry, Material, Obtained};
 use super::references::{Opened, References};
 
@@ -36,7 +36,10 @@ pub fn check(
     from_user: bool,
     faults: &Faults,
 ) -> Counted {
-    let mut counted = Counted { files: files.len(), ..Counted::default() };
+    let mut counted = Counted {
+        files: files.len(),
+        ..Counted::default()
+    };
     let mut materials: Vec<Material> = Vec::new();
     let mut interfaces: Vec<InterfaceEntry> = Vec::new();
     let mut references = library.map_or_else(|| References::new(""), |l| l.references().clone());
@@ -60,7 +63,10 @@ pub fn check(
         .chain(interfaces.iter().flat_map(commons_of_interface))
         .collect();
     counted.records = commons.len();
-    counted.read = commons.iter().filter(|c| c.obtained == Obtained::Read).count();
+    counted.read = commons
+        .iter()
+        .filter(|c| c.obtained == Obtained::Read)
+        .count();
     unique_ids(&commons, faults);
     sources(&commons, &references, faults);
     links(&commons, library, faults);
@@ -77,13 +83,23 @@ fn check_references(name: &str, text: &str, faults: &Faults) -> usize {
         // The last entry of that key is the one that is one too many.
         let start = text.rfind(&format!("{{{key},")).map_or(0, |at| at + 1);
         faults.push(Fault {
-            place: Some(Place { source: Arc::clone(&source), span: start..start + key.len() }),
+            place: Some(Place {
+                source: Arc::clone(&source),
+                span: start..start + key.len(),
+            }),
             field: key.to_owned(),
-            wrong: Wrong::Conflict { reason, help: Some(help.to_owned()) },
+            wrong: Wrong::Conflict {
+                reason,
+                help: Some(help.to_owned()),
+            },
         });
     };
     for key in &own.duplicates {
-        fault(key, "this key stands twice".to_owned(), "give each entry a key of its own");
+        fault(
+            key,
+            "this key stands twice".to_owned(),
+            "give each entry a key of its own",
+        );
     }
     for key in own.keys() {
         match own.get(key) {
@@ -95,7 +111,10 @@ fn check_references(name: &str, text: &str, faults: &Faults) -> usize {
             Ok(_) | Err(None) => {}
             Err(Some(reason)) => fault(
                 key,
-                format!("the entry cannot be read: {}", reason.split(':').next().unwrap_or(&reason)),
+                format!(
+                    "the entry cannot be read: {}",
+                    reason.split(':').next().unwrap_or(&reason)
+                ),
                 "check its commas and braces",
             ),
         }
@@ -113,14 +132,27 @@ fn at(common: &Common, field: &str, wrong: Wrong) -> Fault {
         _ => None,
     };
     let place = place.unwrap_or(&common.place).clone();
-    Fault { place: Some(place), field: format!("{}: {field}", common.id), wrong }
+    Fault {
+        place: Some(place),
+        field: format!("{}: {field}", common.id),
+        wrong,
+    }
 }
 
 /// A fault at an id that a record names.
 fn at_link(common: &Common, field: &str, id: &str, wrong: Wrong) -> Fault {
-    let place = common.fields.links.iter().find(|(known, _)| known == id).map(|(_, p)| p);
+    let place = common
+        .fields
+        .links
+        .iter()
+        .find(|(known, _)| known == id)
+        .map(|(_, p)| p);
     let place = place.unwrap_or(&common.place).clone();
-    Fault { place: Some(place), field: format!("{}: {field}", common.id), wrong }
+    Fault {
+        place: Some(place),
+        field: format!("{}: {field}", common.id),
+        wrong,
+    }
 }
 
 fn unique_ids(commons: &[&Common], faults: &Faults) {
@@ -160,8 +192,13 @@ fn sources(commons: &[&Common], references: &References, faults: &Faults) {
                         common,
                         "obtained",
                         Wrong::Conflict {
-                            reason: format!("marked as read, but its source `{key}` was never opened"),
-                            help: Some("mark it as recalled, or say in the reference how it was opened".to_owned()),
+                            reason: format!(
+                                "marked as read, but its source `{key}` was never opened"
+                            ),
+                            help: Some(
+                                "mark it as recalled, or say in the reference how it was opened"
+                                    .to_owned(),
+                            ),
                         },
                     ));
                 }
@@ -200,7 +237,9 @@ fn links(commons: &[&Common], library: Option<&Library>, faults: &Faults) {
             .chain(common.parents.iter().map(|id| ("parents", id)))
         {
             match known.get(id.as_str()) {
-                Some(other) if field == "disagrees_with" && !other.disagrees_with.contains(&common.id) => {
+                Some(other)
+                    if field == "disagrees_with" && !other.disagrees_with.contains(&common.id) =>
+                {
                     faults.push(at_link(
                         common,
                         field,
@@ -221,7 +260,13 @@ fn links(commons: &[&Common], library: Option<&Library>, faults: &Faults) {
                     Wrong::UnknownWord {
                         what: "record id",
                         found: id.clone(),
-                        nearest: nearest(id, known.keys().copied().chain(shipped.iter().map(String::as_str))),
+                        nearest: nearest(
+                            id,
+                            known
+                                .keys()
+                                .copied()
+                                .chain(shipped.iter().map(String::as_str)),
+                        ),
                         allowed: Vec::new(),
                     },
                 )),

@@ -167,8 +167,9 @@ struct Rank {
 }
 
 fn rank(common: &Common, bound: bool, wanted: &Wanted, order: usize) -> Rank {
-    let fine_temperature =
-        common.temperature.map_or(0.0, |t| (t - wanted.temperature).abs() / t);
+    let fine_temperature = common
+        .temperature
+        .map_or(0.0, |t| (t - wanted.temperature).abs() / t);
     let fine_doping = match (&common.conditions.doping, wanted.doping) {
         (Some(r), Some(w)) => (r.si / w).ln().abs(),
         (None, Some(_)) => 20.0,
@@ -196,17 +197,26 @@ fn rank(common: &Common, bound: bool, wanted: &Wanted, order: usize) -> Rank {
 fn compare(a: &Rank, b: &Rank) -> (Ordering, Decided) {
     let steps = [
         (a.doping.total_cmp(&b.doping), Decided::Doping),
-        (a.temperature.total_cmp(&b.temperature), Decided::Temperature),
+        (
+            a.temperature.total_cmp(&b.temperature),
+            Decided::Temperature,
+        ),
         (a.own.cmp(&b.own), Decided::OwnRecord),
         (a.bound.cmp(&b.bound), Decided::ValueBeforeBound),
         (a.dopant.cmp(&b.dopant), Decided::Dopant),
         (a.status.cmp(&b.status), Decided::Status),
         (a.obtained.cmp(&b.obtained), Decided::Obtained),
         (a.fine_doping.total_cmp(&b.fine_doping), Decided::Doping),
-        (a.fine_temperature.total_cmp(&b.fine_temperature), Decided::Temperature),
+        (
+            a.fine_temperature.total_cmp(&b.fine_temperature),
+            Decided::Temperature,
+        ),
         (a.order.cmp(&b.order), Decided::Order),
     ];
-    steps.into_iter().find(|(o, _)| *o != Ordering::Equal).unwrap_or((Ordering::Equal, Decided::Order))
+    steps
+        .into_iter()
+        .find(|(o, _)| *o != Ordering::Equal)
+        .unwrap_or((Ordering::Equal, Decided::Order))
 }
 
 fn marks_of(common: &Common, wanted: &Wanted) -> Vec<Mark> {
@@ -220,7 +230,10 @@ fn marks_of(common: &Common, wanted: &Wanted) -> Vec<Mark> {
     }
     if let Some(t) = common.temperature {
         if (t - wanted.temperature).abs() > TEMPERATURE_REACH * t * (1.0 + 1e-12) {
-            marks.push(Mark::OtherTemperature { record: t, wanted: wanted.temperature });
+            marks.push(Mark::OtherTemperature {
+                record: t,
+                wanted: wanted.temperature,
+            });
         }
         if common.temperature_from != super::record::TemperatureFrom::Stated {
             marks.push(Mark::TemperatureNotStated);
@@ -229,15 +242,23 @@ fn marks_of(common: &Common, wanted: &Wanted) -> Vec<Mark> {
     if let (Some(r), Some(w)) = (&common.conditions.doping, wanted.doping)
         && (r.si / w).ln().abs() > DOPING_REACH.ln() * (1.0 + 1e-12)
     {
-        marks.push(Mark::OtherDoping { record: r.si, wanted: w });
+        marks.push(Mark::OtherDoping {
+            record: r.si,
+            wanted: w,
+        });
     }
     if let (Some(a), Some(b)) = (&common.conditions.dopant, &wanted.dopant)
         && !a.eq_ignore_ascii_case(b)
     {
-        marks.push(Mark::OtherDopant { record: a.clone(), wanted: b.clone() });
+        marks.push(Mark::OtherDopant {
+            record: a.clone(),
+            wanted: b.clone(),
+        });
     }
     if !common.disagrees_with.is_empty() {
-        marks.push(Mark::Disagrees { with: common.disagrees_with.clone() });
+        marks.push(Mark::Disagrees {
+            with: common.disagrees_with.clone(),
+        });
     }
     marks
 }
@@ -263,12 +284,19 @@ fn best<'a, T>(
         .collect();
     ranked.sort_by(|a, b| compare(&a.0, &b.0).0);
     let (first, record) = ranked.first()?;
-    let decided = ranked.get(1).map_or(Decided::OnlyRecord, |(second, _)| compare(first, second).1);
+    let decided = ranked
+        .get(1)
+        .map_or(Decided::OnlyRecord, |(second, _)| compare(first, second).1);
     let mut marks = marks_of(common(record), wanted);
     if bound(record) {
         marks.push(Mark::BoundOnly);
     }
-    Some(Chosen { record, decided, among: ranked.len(), marks })
+    Some(Chosen {
+        record,
+        decided,
+        among: ranked.len(),
+        marks,
+    })
 }
 
 /// The reading with the prior of its property class where its source states no spread.
@@ -284,10 +312,15 @@ pub fn with_prior(
     }
     let spread = library.prior(property).and_then(|prior| {
         // A pure number is written bare, so that `± 0.1` means the same beside 0.5 and beside 50 %.
-        let value =
-            if kind.dimension == Dimension::NONE { reading.si.to_string() } else { reading.text.clone() };
+        let value = if kind.dimension == Dimension::NONE {
+            reading.si.to_string()
+        } else {
+            reading.text.clone()
+        };
         let text = format!("{value} {}", prior.spread);
-        read(&text, kind, &Context::default()).ok().map(|r| (r, prior.spread.clone()))
+        read(&text, kind, &Context::default())
+            .ok()
+            .map(|r| (r, prior.spread.clone()))
     });
     match spread {
         Some((r, prior)) => (r, Some(Mark::PriorSpread { prior })),
@@ -312,9 +345,16 @@ fn is_bound(reading: &Reading) -> bool {
 ///
 /// # Errors
 /// [`NotChosen`]: none exists, or several dopings exist and the design states none.
-pub fn value(material: &Material, property: &str, wanted: &Wanted) -> Result<Chosen<ValueRecord>, NotChosen> {
-    let candidates: Vec<&ValueRecord> =
-        material.values.iter().filter(|v| v.property.name == property).collect();
+pub fn value(
+    material: &Material,
+    property: &str,
+    wanted: &Wanted,
+) -> Result<Chosen<ValueRecord>, NotChosen> {
+    let candidates: Vec<&ValueRecord> = material
+        .values
+        .iter()
+        .filter(|v| v.property.name == property)
+        .collect();
     if wanted.doping.is_none() {
         let mut dopings: Vec<f64> = candidates
             .iter()
@@ -353,7 +393,11 @@ pub fn pair(material: &Material, wanted: &Wanted) -> Option<Chosen<PairRecord>> 
         marks.push(Mark::ResistivityAssumed);
     }
     let beta = &chosen.record.bulk_asymmetry;
-    if beta.spread.standard_deviation(beta.si).is_some_and(|sd| beta.si.abs() + sd >= 1.0) {
+    if beta
+        .spread
+        .standard_deviation(beta.si)
+        .is_some_and(|sd| beta.si.abs() + sd >= 1.0)
+    {
         marks.push(Mark::NearUnity);
     }
     Some(Chosen {
@@ -442,12 +486,18 @@ fn best_contact(
     number: impl Fn(&ContactRecord) -> Option<Reading>,
 ) -> Option<ContactValue> {
     let candidates: Vec<&(ContactRecord, String, Option<String>)> = found.iter().collect();
-    let bound = |c: &(ContactRecord, String, Option<String>)| number(&c.0).is_some_and(|r| is_bound(&r));
+    let bound =
+        |c: &(ContactRecord, String, Option<String>)| number(&c.0).is_some_and(|r| is_bound(&r));
     let chosen = best(candidates, wanted, |c| &c.0.common, bound)?;
     let (record, interface, barrier) = chosen.record.clone();
     Some(ContactValue {
         reading: number(&record)?,
-        chosen: Chosen { record, decided: chosen.decided, among: chosen.among, marks: chosen.marks },
+        chosen: Chosen {
+            record,
+            decided: chosen.decided,
+            among: chosen.among,
+            marks: chosen.marks,
+        },
         interface,
         barrier,
     })
@@ -470,8 +520,9 @@ pub fn contact_number(
         .filter(|(_, b, c)| b.as_deref() == barrier && c.as_deref() == Some(channel))
         .map(|(id, b, _)| (id, b))
         .collect();
-    let found =
-        contacts_of(library, faults, &ids, |c| c.kind.is_interface_asymmetry() && number.of(c).is_some());
+    let found = contacts_of(library, faults, &ids, |c| {
+        c.kind.is_interface_asymmetry() && number.of(c).is_some()
+    });
     let mut value = best_contact(&found, wanted, |c| number.of(c).cloned())?;
     let (reading, mark) = with_prior(library, number.property(), number.kind(), &value.reading);
     value.reading = reading;

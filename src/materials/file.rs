@@ -10,9 +10,9 @@ use crate::quantities::unit::{Context, parse_unit};
 
 use super::property::{PROPERTIES, Property, property_named};
 use super::record::{
-    CalibrationRecord, Class, Common, Conditions, ContactKind, ContactRecord, FieldPlaces, InterfaceEntry,
-    LawRecord, Material, NoteRecord, Obtained, PairRecord, Prior, SpreadFrom, Status,
-    TemperatureFrom, ValueRecord,
+    CalibrationRecord, Class, Common, Conditions, ContactKind, ContactRecord, FieldPlaces,
+    InterfaceEntry, LawRecord, Material, NoteRecord, Obtained, PairRecord, Prior, SpreadFrom,
+    Status, TemperatureFrom, ValueRecord,
 };
 
 /// What one file holds.
@@ -40,8 +40,14 @@ pub(super) fn read_file(root: &Node, from_user: bool, faults: &Faults) -> Option
             );
             return None;
         }
-    } else if ["material", "interface", "prior"].iter().any(|head| top.has(head)) {
-        top.missing("format", "the first line of a file of records is `format = 1`");
+    } else if ["material", "interface", "prior"]
+        .iter()
+        .any(|head| top.has(head))
+    {
+        top.missing(
+            "format",
+            "the first line of a file of records is `format = 1`",
+        );
     }
     let content = if top.has("material") {
         read_material(&top, from_user, faults).map(|m| Content::Material(Box::new(m)))
@@ -50,7 +56,10 @@ pub(super) fn read_file(root: &Node, from_user: bool, faults: &Faults) -> Option
     } else if top.has("prior") {
         Some(Content::Priors(read_priors(&top)))
     } else {
-        top.missing("material", "a file of records has one of the tables [material], [interface] or [[prior]]");
+        top.missing(
+            "material",
+            "a file of records has one of the tables [material], [interface] or [[prior]]",
+        );
         return None;
     };
     top.finish();
@@ -61,7 +70,10 @@ fn read_priors(top: &Reader<'_>) -> Vec<Prior> {
     top.tables("prior")
         .iter()
         .filter_map(|r| {
-            let property = r.required_text("property", "the property class, for example \"resistivity\"");
+            let property = r.required_text(
+                "property",
+                "the property class, for example \"resistivity\"",
+            );
             let spread = r.required_text("spread", "for example \"×/ 1.3\" or \"± 0.1\"");
             if let (Some(property), Some(spread)) = (&property, &spread) {
                 check_prior(r, &property.value, &spread.value);
@@ -69,7 +81,11 @@ fn read_priors(top: &Reader<'_>) -> Vec<Prior> {
             let note = r.text("note").map(|t| t.value);
             r.word("obtained", "way of obtaining", Obtained::WORDS);
             r.finish();
-            Some(Prior { property: property?.value, spread: spread?.value, note })
+            Some(Prior {
+                property: property?.value,
+                spread: spread?.value,
+                note,
+            })
         })
         .collect()
 }
@@ -79,7 +95,10 @@ const OTHER_PRIORS: &[(&str, &Kind)] = &[
     ("bulk_asymmetry", &kind::BULK_ASYMMETRY),
     ("interface_asymmetry", &kind::INTERFACE_ASYMMETRY),
     ("polarization", &kind::SPIN_POLARIZATION),
-    ("interface_spin_resistance", &kind::INTERFACE_SPIN_RESISTANCE),
+    (
+        "interface_spin_resistance",
+        &kind::INTERFACE_SPIN_RESISTANCE,
+    ),
     ("resistance_area", &kind::RESISTANCE_AREA),
     ("spin_memory_loss", &kind::SPIN_MEMORY_LOSS),
     ("thickness", &kind::THICKNESS),
@@ -88,9 +107,17 @@ const OTHER_PRIORS: &[(&str, &Kind)] = &[
 
 /// A prior is of a known property, and its text can stand behind a value of it.
 fn check_prior(r: &Reader<'_>, property: &str, spread: &str) {
-    let other = OTHER_PRIORS.iter().find(|(name, _)| *name == property).map(|(_, kind)| *kind);
+    let other = OTHER_PRIORS
+        .iter()
+        .find(|(name, _)| *name == property)
+        .map(|(_, kind)| *kind);
     let Some(kind) = property_named(property).map(|p| p.kind).or(other) else {
-        let names = || PROPERTIES.iter().map(|p| p.name).chain(OTHER_PRIORS.iter().map(|(name, _)| *name));
+        let names = || {
+            PROPERTIES
+                .iter()
+                .map(|p| p.name)
+                .chain(OTHER_PRIORS.iter().map(|(name, _)| *name))
+        };
         r.fault(
             "property",
             Wrong::UnknownWord {
@@ -102,7 +129,11 @@ fn check_prior(r: &Reader<'_>, property: &str, spread: &str) {
         );
         return;
     };
-    let example = kind.examples.iter().find(|e| !e.contains('%')).or(kind.examples.first());
+    let example = kind
+        .examples
+        .iter()
+        .find(|e| !e.contains('%'))
+        .or(kind.examples.first());
     let readable = example.is_none_or(|value| {
         read(&format!("{value} {spread}"), kind, &Context::default())
             .is_ok_and(|reading| !matches!(reading.spread, Spread::Exact))
@@ -119,8 +150,14 @@ fn check_prior(r: &Reader<'_>, property: &str, spread: &str) {
 
 fn read_material(top: &Reader<'_>, from_user: bool, faults: &Faults) -> Option<Material> {
     let head = top.table("material")?;
-    let id = head.required_text("id", "lower-case words with hyphens, for example `id = \"cobalt\"`");
-    let name = head.required_text("name", "for example `name = \"Cobalt, polycrystalline film\"`");
+    let id = head.required_text(
+        "id",
+        "lower-case words with hyphens, for example `id = \"cobalt\"`",
+    );
+    let name = head.required_text(
+        "name",
+        "for example `name = \"Cobalt, polycrystalline film\"`",
+    );
     let class = if head.has("class") {
         head.word("class", "class", Class::WORDS)
     } else {
@@ -132,11 +169,31 @@ fn read_material(top: &Reader<'_>, from_user: bool, faults: &Faults) -> Option<M
     head.text("formula");
     head.finish();
     let owner = Owner { from_user };
-    let values = top.tables("value").iter().filter_map(|r| owner.value(r)).collect();
-    let pairs = top.tables("pair").iter().filter_map(|r| owner.pair(r)).collect();
-    let calibrations = top.tables("calibration").iter().filter_map(|r| owner.calibration(r)).collect();
-    let laws = top.tables("law").iter().filter_map(|r| owner.law(r, faults)).collect();
-    let notes = top.tables("note").iter().filter_map(|r| owner.note(r)).collect();
+    let values = top
+        .tables("value")
+        .iter()
+        .filter_map(|r| owner.value(r))
+        .collect();
+    let pairs = top
+        .tables("pair")
+        .iter()
+        .filter_map(|r| owner.pair(r))
+        .collect();
+    let calibrations = top
+        .tables("calibration")
+        .iter()
+        .filter_map(|r| owner.calibration(r))
+        .collect();
+    let laws = top
+        .tables("law")
+        .iter()
+        .filter_map(|r| owner.law(r, faults))
+        .collect();
+    let notes = top
+        .tables("note")
+        .iter()
+        .filter_map(|r| owner.note(r))
+        .collect();
     Some(Material {
         id: id?.value,
         name: name?.value,
@@ -153,7 +210,10 @@ fn read_material(top: &Reader<'_>, from_user: bool, faults: &Faults) -> Option<M
 fn read_interface(top: &Reader<'_>, from_user: bool, _faults: &Faults) -> Option<InterfaceEntry> {
     let head = top.table("interface")?;
     let id = head.required_text("id", "for example `id = \"iron-magnesia-silicon\"`");
-    let name = head.required_text("name", "for example `name = \"Iron on magnesia on n-silicon\"`");
+    let name = head.required_text(
+        "name",
+        "for example `name = \"Iron on magnesia on n-silicon\"`",
+    );
     let ferromagnet = head.required_text("ferromagnet", "id of a ferromagnet of the library");
     let barrier = head.text("barrier");
     let channel = head.text("channel");
@@ -164,10 +224,26 @@ fn read_interface(top: &Reader<'_>, from_user: bool, _faults: &Faults) -> Option
         .map(|t| (t.value.clone(), t.place.clone()))
         .collect();
     let owner = Owner { from_user };
-    let contacts = top.tables("contact").iter().filter_map(|r| owner.contact(r)).collect();
-    let calibrations = top.tables("calibration").iter().filter_map(|r| owner.calibration(r)).collect();
-    let values = top.tables("value").iter().filter_map(|r| owner.value(r)).collect();
-    let notes = top.tables("note").iter().filter_map(|r| owner.note(r)).collect();
+    let contacts = top
+        .tables("contact")
+        .iter()
+        .filter_map(|r| owner.contact(r))
+        .collect();
+    let calibrations = top
+        .tables("calibration")
+        .iter()
+        .filter_map(|r| owner.calibration(r))
+        .collect();
+    let values = top
+        .tables("value")
+        .iter()
+        .filter_map(|r| owner.value(r))
+        .collect();
+    let notes = top
+        .tables("note")
+        .iter()
+        .filter_map(|r| owner.note(r))
+        .collect();
     Some(InterfaceEntry {
         id: id?.value,
         name: name?.value,
@@ -210,31 +286,55 @@ const SPREAD_WORDS: &[(&str, SpreadFrom)] = &[
     ("recalled", SpreadFrom::Recalled),
     ("not stated", SpreadFrom::NotStated),
 ];
-const FORM_WORDS: &[(&str, &str)] =
-    &[("bulk", "bulk"), ("film", "film"), ("wire", "wire"), ("nanowire", "nanowire")];
+const FORM_WORDS: &[(&str, &str)] = &[
+    ("bulk", "bulk"),
+    ("film", "film"),
+    ("wire", "wire"),
+    ("nanowire", "nanowire"),
+];
 const TYPE_WORDS: &[(&str, &str)] = &[("n", "n"), ("p", "p")];
-const NOTE_WORDS: &[(&str, &str)] =
-    &[("hazard", "hazard"), ("incompatibility", "incompatibility"), ("growth", "growth")];
+const NOTE_WORDS: &[(&str, &str)] = &[
+    ("hazard", "hazard"),
+    ("incompatibility", "incompatibility"),
+    ("growth", "growth"),
+];
 
 fn conflict(r: &Reader<'_>, key: &str, reason: &str, help: &str) {
-    r.fault(key, Wrong::Conflict { reason: reason.to_owned(), help: Some(help.to_owned()) });
+    r.fault(
+        key,
+        Wrong::Conflict {
+            reason: reason.to_owned(),
+            help: Some(help.to_owned()),
+        },
+    );
 }
 
 impl Owner {
     fn common(&self, r: &Reader<'_>, temperature_needed: bool) -> Option<Common> {
-        let id = r.required_text("id", "a unique name of the record, for example `id = \"cobalt.pair.1\"`");
+        let id = r.required_text(
+            "id",
+            "a unique name of the record, for example `id = \"cobalt.pair.1\"`",
+        );
         let temperature = r.quantity("temperature", &kind::TEMPERATURE, &Context::default());
         if temperature_needed && !r.has("temperature") {
-            r.missing("temperature", "this property depends on temperature: `temperature = \"300 K\"`");
+            r.missing(
+                "temperature",
+                "this property depends on temperature: `temperature = \"300 K\"`",
+            );
         }
         let temperature_from = r
-            .word("temperature_is", "way a temperature is known", TEMPERATURE_WORDS)
+            .word(
+                "temperature_is",
+                "way a temperature is known",
+                TEMPERATURE_WORDS,
+            )
             .map_or(TemperatureFrom::Stated, |w| w.value);
         let technique = r.text("technique").map(|t| t.value);
         let source = r.text("source");
         let locus = r.text("locus").map(|t| t.value);
         let obtained = if r.has("obtained") {
-            r.word("obtained", "way of obtaining", Obtained::WORDS).map(|w| w.value)
+            r.word("obtained", "way of obtaining", Obtained::WORDS)
+                .map(|w| w.value)
         } else {
             r.node("obtained");
             r.missing("obtained", "how the number was obtained: read, recalled, derived, estimated, common practice or measured here");
@@ -242,8 +342,9 @@ impl Owner {
         };
         let parents = r.texts("parents");
         let rule = r.text("rule").map(|t| t.value);
-        let status =
-            r.word("status", "status", STATUS_WORDS).map_or(Status::Alternative, |w| w.value);
+        let status = r
+            .word("status", "status", STATUS_WORDS)
+            .map_or(Status::Alternative, |w| w.value);
         let why = r.text("why").map(|t| t.value);
         let disagrees_with = r.texts("disagrees_with");
         let links = parents
@@ -252,18 +353,27 @@ impl Owner {
             .map(|t| (t.value.clone(), t.place.clone()))
             .collect();
         let note = r.text("note").map(|t| t.value);
-        let spread_from =
-            r.word("uncertainty", "origin of a spread", SPREAD_WORDS).map_or(SpreadFrom::Published, |w| w.value);
+        let spread_from = r
+            .word("uncertainty", "origin of a spread", SPREAD_WORDS)
+            .map_or(SpreadFrom::Published, |w| w.value);
         let conditions = self.conditions(r);
         if status != Status::Alternative && why.is_none() {
             r.missing("why", "a preferred or superseded record says why");
         }
         match obtained {
             Some(Obtained::Read) if locus.is_none() => {
-                r.missing("locus", "a number that was read says where: table, figure, page or \"abstract\"");
+                r.missing(
+                    "locus",
+                    "a number that was read says where: table, figure, page or \"abstract\"",
+                );
             }
             Some(Obtained::Derived) if parents.is_empty() || rule.is_none() => {
-                conflict(r, "obtained", "a derived number names its parents and the rule", "add `parents = [\"…\"]` and `rule = \"…\"`");
+                conflict(
+                    r,
+                    "obtained",
+                    "a derived number names its parents and the rule",
+                    "add `parents = [\"…\"]` and `rule = \"…\"`",
+                );
             }
             _ => {}
         }
@@ -300,29 +410,46 @@ impl Owner {
     }
 
     fn conditions(&self, r: &Reader<'_>) -> Conditions {
-        let Some(c) = r.table("conditions") else { return Conditions::default() };
+        let Some(c) = r.table("conditions") else {
+            return Conditions::default();
+        };
         let mut others = Vec::new();
-        let form = c.word("form", "form", FORM_WORDS).map(|w| w.value.to_owned());
-        let carrier_type = c.word("type", "carrier type", TYPE_WORDS).map(|w| w.value.to_owned());
+        let form = c
+            .word("form", "form", FORM_WORDS)
+            .map(|w| w.value.to_owned());
+        let carrier_type = c
+            .word("type", "carrier type", TYPE_WORDS)
+            .map(|w| w.value.to_owned());
         let dopant = c.text("dopant").map(|t| t.value);
-        let doping = c.quantity("doping", &kind::DOPING, &Context::default()).map(|p| p.value);
+        let doping = c
+            .quantity("doping", &kind::DOPING, &Context::default())
+            .map(|p| p.value);
         for key in ["growth", "orientation", "thickness", "bias", "anneal"] {
             if let Some(t) = c.text(key) {
                 others.push((key.to_owned(), t.value));
             }
         }
         c.finish();
-        Conditions { form, carrier_type, dopant, doping, others }
+        Conditions {
+            form,
+            carrier_type,
+            dopant,
+            doping,
+            others,
+        }
     }
 
     /// A number of a record: a spread is required unless the record says that none is stated.
     fn number(&self, r: &Reader<'_>, key: &'static str, kind: &'static Kind) -> Option<Reading> {
         let reading = r.quantity(key, kind, &Context::default())?.value;
-        let not_stated = r.node("uncertainty").is_some_and(
-            |n| matches!(&n.value, Value::Text(t) if t == "not stated"),
-        );
+        let not_stated = r
+            .node("uncertainty")
+            .is_some_and(|n| matches!(&n.value, Value::Text(t) if t == "not stated"));
         match (&reading.spread, not_stated) {
-            (Spread::Exact, true) => Some(Reading { spread: Spread::Unknown, ..reading }),
+            (Spread::Exact, true) => Some(Reading {
+                spread: Spread::Unknown,
+                ..reading
+            }),
             (Spread::Exact, false) => {
                 conflict(
                     r,
@@ -373,7 +500,11 @@ impl Owner {
         };
         r.node("value");
         r.finish();
-        Some(ValueRecord { common: common?, property: property?, reading: reading? })
+        Some(ValueRecord {
+            common: common?,
+            property: property?,
+            reading: reading?,
+        })
     }
 
     fn required(&self, r: &Reader<'_>, key: &'static str, kind: &'static Kind) -> Option<Reading> {
@@ -389,15 +520,22 @@ impl Owner {
     fn pair(&self, r: &Reader<'_>) -> Option<PairRecord> {
         let common = self.common(r, true);
         if !r.has("technique") {
-            r.missing("technique", "β and λ are used as a pair from one technique: say which");
+            r.missing(
+                "technique",
+                "β and λ are used as a pair from one technique: say which",
+            );
         }
         let resistivity = self.required(r, "resistivity", &kind::RESISTIVITY);
         let bulk_asymmetry = self.required(r, "bulk_asymmetry", &kind::BULK_ASYMMETRY);
         let spin_diffusion_length =
             self.required(r, "spin_diffusion_length", &kind::SPIN_DIFFUSION_LENGTH);
-        let resistivity_assumed =
-            r.word("resistivity_is", "way a resistivity is known", &[("assumed", true), ("measured", false)])
-                .is_some_and(|w| w.value);
+        let resistivity_assumed = r
+            .word(
+                "resistivity_is",
+                "way a resistivity is known",
+                &[("assumed", true), ("measured", false)],
+            )
+            .is_some_and(|w| w.value);
         r.finish();
         Some(PairRecord {
             common: common?,
@@ -411,7 +549,8 @@ impl Owner {
     fn contact(&self, r: &Reader<'_>) -> Option<ContactRecord> {
         let common = self.common(r, true);
         let kind = if r.has("kind") {
-            r.word("kind", "kind of contact record", ContactKind::WORDS).map(|w| w.value)
+            r.word("kind", "kind of contact record", ContactKind::WORDS)
+                .map(|w| w.value)
         } else {
             r.node("kind");
             r.missing("kind", "for example `kind = \"device fit\"`");
@@ -419,8 +558,11 @@ impl Owner {
         };
         let interface_asymmetry = self.number(r, "interface_asymmetry", &kind::INTERFACE_ASYMMETRY);
         let polarization = self.number(r, "polarization", &kind::SPIN_POLARIZATION);
-        let interface_spin_resistance =
-            self.number(r, "interface_spin_resistance", &kind::INTERFACE_SPIN_RESISTANCE);
+        let interface_spin_resistance = self.number(
+            r,
+            "interface_spin_resistance",
+            &kind::INTERFACE_SPIN_RESISTANCE,
+        );
         let resistance_area = self.number(r, "resistance_area", &kind::RESISTANCE_AREA);
         let spin_memory_loss = self.number(r, "spin_memory_loss", &kind::SPIN_MEMORY_LOSS);
         if let Some(k) = kind {
@@ -441,9 +583,18 @@ impl Owner {
                 );
             }
         }
-        let numbers = ["interface_asymmetry", "polarization", "interface_spin_resistance", "resistance_area", "spin_memory_loss"];
+        let numbers = [
+            "interface_asymmetry",
+            "polarization",
+            "interface_spin_resistance",
+            "resistance_area",
+            "spin_memory_loss",
+        ];
         if !numbers.iter().any(|k| r.has(k)) {
-            r.missing("interface_asymmetry", "a contact record holds at least one number");
+            r.missing(
+                "interface_asymmetry",
+                "a contact record holds at least one number",
+            );
         }
         r.finish();
         Some(ContactRecord {
@@ -461,18 +612,33 @@ impl Owner {
         let common = self.common(r, true);
         let electrodes: Vec<String> = r.texts("electrodes").into_iter().map(|t| t.value).collect();
         if electrodes.len() != 2 {
-            conflict(r, "electrodes", "a calibration is keyed by both electrodes", "write `electrodes = [\"…\", \"…\"]`");
+            conflict(
+                r,
+                "electrodes",
+                "a calibration is keyed by both electrodes",
+                "write `electrodes = [\"…\", \"…\"]`",
+            );
         }
         let resistance_area = self.number(r, "resistance_area", &kind::RESISTANCE_AREA);
         let thickness = self.number(r, "thickness", &kind::THICKNESS);
         let thickness_per_decade = self.number(r, "thickness_per_decade", &kind::DECADE_THICKNESS);
-        if thickness_per_decade.is_none() && (resistance_area.is_none() || thickness.is_none())
+        if thickness_per_decade.is_none()
+            && (resistance_area.is_none() || thickness.is_none())
             && !r.has("thickness_per_decade")
         {
-            r.missing("thickness_per_decade", "a calibration gives a slope, or a resistance_area at a thickness, or both");
+            r.missing(
+                "thickness_per_decade",
+                "a calibration gives a slope, or a resistance_area at a thickness, or both",
+            );
         }
         r.finish();
-        Some(CalibrationRecord { common: common?, electrodes, resistance_area, thickness, thickness_per_decade })
+        Some(CalibrationRecord {
+            common: common?,
+            electrodes,
+            resistance_area,
+            thickness,
+            thickness_per_decade,
+        })
     }
 
     fn law(&self, r: &Reader<'_>, faults: &Faults) -> Option<LawRecord> {
@@ -482,7 +648,9 @@ impl Owner {
         let formula = r.required_text("formula", "the formula, readable");
         let error = r.text("error").map(|t| t.value);
         let pairs = |key: &'static str| -> Vec<(String, String)> {
-            let Some(table) = r.table(key) else { return Vec::new() };
+            let Some(table) = r.table(key) else {
+                return Vec::new();
+            };
             table
                 .entries()
                 .into_iter()
@@ -492,7 +660,10 @@ impl Owner {
                         faults.push(Fault {
                             place: Some(node.place.clone()),
                             field: table.path_of(k),
-                            wrong: Wrong::Type { found: other.type_name(), expected: "a text" },
+                            wrong: Wrong::Type {
+                                found: other.type_name(),
+                                expected: "a text",
+                            },
                         });
                         None
                     }
@@ -503,7 +674,12 @@ impl Owner {
         let coefficients = pairs("coefficients");
         for (k, text) in &coefficients {
             if !is_coefficient(text) {
-                conflict(r, "coefficients", &format!("`{k}` = \"{text}\" is not a number with or without unit"), "write, for example, \"0.711\" or \"9.2e16 /cm³\"");
+                conflict(
+                    r,
+                    "coefficients",
+                    &format!("`{k}` = \"{text}\" is not a number with or without unit"),
+                    "write, for example, \"0.711\" or \"9.2e16 /cm³\"",
+                );
             }
         }
         r.finish();
@@ -529,6 +705,10 @@ impl Owner {
         };
         let text = r.required_text("text", "the remark");
         r.finish();
-        Some(NoteRecord { common: common?, kind: kind?, text: text?.value })
+        Some(NoteRecord {
+            common: common?,
+            kind: kind?,
+            text: text?.value,
+        })
     }
 }

@@ -85,7 +85,12 @@ fn parse_shipped(file: &ShippedFile, faults: &Faults) -> Option<Content> {
 }
 
 /// Reads one text of records.
-pub(super) fn parse_text(name: &str, text: &str, from_user: bool, faults: &Faults) -> Option<Content> {
+pub(super) fn parse_text(
+    name: &str,
+    text: &str,
+    from_user: bool,
+    faults: &Faults,
+) -> Option<Content> {
     let source = Source::new(name, text);
     match tree::parse(&source) {
         Ok(root) => read_file(&root, from_user, faults),
@@ -132,9 +137,16 @@ impl Library {
         for (name, text) in files {
             if name.ends_with(".bib") {
                 let own = References::new(text);
-                let known = |key: &&str| self.references.bibtex(key).is_some_and(|b| own.bibtex(key) != Some(b));
-                let other: Vec<String> =
-                    own.keys().filter(known).map(|k| format!("reference {k}")).collect();
+                let known = |key: &&str| {
+                    self.references
+                        .bibtex(key)
+                        .is_some_and(|b| own.bibtex(key) != Some(b))
+                };
+                let other: Vec<String> = own
+                    .keys()
+                    .filter(known)
+                    .map(|k| format!("reference {k}"))
+                    .collect();
                 self.laid_over.extend(other);
                 self.references.lay_over(text);
                 continue;
@@ -144,8 +156,11 @@ impl Library {
                 Some(Content::Interface(i)) => self.user_interfaces.push(*i),
                 Some(Content::Priors(mut p)) => {
                     let known = |q: &&Prior| self.priors.iter().any(|k| k.property == q.property);
-                    let other: Vec<String> =
-                        p.iter().filter(known).map(|q| format!("prior of {}", q.property)).collect();
+                    let other: Vec<String> = p
+                        .iter()
+                        .filter(known)
+                        .map(|q| format!("prior of {}", q.property))
+                        .collect();
                     self.laid_over.extend(other);
                     p.append(&mut self.priors);
                     self.priors = p;
@@ -160,11 +175,19 @@ impl Library {
         let mut replaced = self.laid_over.clone();
         let own: Vec<String> = self.user_materials.iter().map(|m| m.id.clone()).collect();
         for id in own {
-            replaced.extend(self.material_with_replaced(&id, faults).map(|(_, r)| r).unwrap_or_default());
+            replaced.extend(
+                self.material_with_replaced(&id, faults)
+                    .map(|(_, r)| r)
+                    .unwrap_or_default(),
+            );
         }
         let own: Vec<String> = self.user_interfaces.iter().map(|i| i.id.clone()).collect();
         for id in own {
-            replaced.extend(self.interface_with_replaced(&id, faults).map(|(_, r)| r).unwrap_or_default());
+            replaced.extend(
+                self.interface_with_replaced(&id, faults)
+                    .map(|(_, r)| r)
+                    .unwrap_or_default(),
+            );
         }
         replaced.sort();
         replaced.dedup();
@@ -180,7 +203,10 @@ impl Library {
                 field: field.to_owned(),
                 wrong: Wrong::Conflict {
                     reason,
-                    help: Some("give the file an id of its own, or make it agree with the shipped one".to_owned()),
+                    help: Some(
+                        "give the file an id of its own, or make it agree with the shipped one"
+                            .to_owned(),
+                    ),
                 },
             });
         };
@@ -192,9 +218,17 @@ impl Library {
                     Role::Material { class, .. } => conflict(
                         commons.first(),
                         &m.id,
-                        format!("the shipped `{}` is a {class}, this file makes it a {}", m.id, m.class.word()),
+                        format!(
+                            "the shipped `{}` is a {class}, this file makes it a {}",
+                            m.id,
+                            m.class.word()
+                        ),
                     ),
-                    _ => conflict(commons.first(), &m.id, format!("`{}` is shipped as an interface", m.id)),
+                    _ => conflict(
+                        commons.first(),
+                        &m.id,
+                        format!("`{}` is shipped as an interface", m.id),
+                    ),
                 }
             }
         }
@@ -223,10 +257,14 @@ impl Library {
         let mut homes: BTreeMap<String, &str> = BTreeMap::new();
         for file in SHIPPED {
             let ids: Vec<String> = match parse_shipped(file, &quiet) {
-                Some(Content::Material(m)) => commons_of_material(&m).iter().map(|c| c.id.clone()).collect(),
-                Some(Content::Interface(i)) => {
-                    commons_of_interface(&i).iter().map(|c| c.id.clone()).collect()
-                }
+                Some(Content::Material(m)) => commons_of_material(&m)
+                    .iter()
+                    .map(|c| c.id.clone())
+                    .collect(),
+                Some(Content::Interface(i)) => commons_of_interface(&i)
+                    .iter()
+                    .map(|c| c.id.clone())
+                    .collect(),
                 _ => continue,
             };
             homes.extend(ids.into_iter().map(|id| (id, file.id)));
@@ -234,19 +272,34 @@ impl Library {
         let own = self
             .user_materials
             .iter()
-            .flat_map(|m| commons_of_material(m).into_iter().map(|c| (m.id.as_str(), c)))
+            .flat_map(|m| {
+                commons_of_material(m)
+                    .into_iter()
+                    .map(|c| (m.id.as_str(), c))
+            })
             .chain(self.user_interfaces.iter().flat_map(|i| {
-                commons_of_interface(i).into_iter().map(|c| (i.id.as_str(), c))
+                commons_of_interface(i)
+                    .into_iter()
+                    .map(|c| (i.id.as_str(), c))
             }));
         for (home, common) in own {
             if let Some(other) = homes.get(&common.id)
                 && *other != home
             {
                 faults.push(Fault {
-                    place: Some(common.fields.id.clone().unwrap_or_else(|| common.place.clone())),
+                    place: Some(
+                        common
+                            .fields
+                            .id
+                            .clone()
+                            .unwrap_or_else(|| common.place.clone()),
+                    ),
                     field: common.id.clone(),
                     wrong: Wrong::Conflict {
-                        reason: format!("the id `{}` belongs to a shipped record of `{other}`", common.id),
+                        reason: format!(
+                            "the id `{}` belongs to a shipped record of `{other}`",
+                            common.id
+                        ),
                         help: Some("give each record an id of its own".to_owned()),
                     },
                 });
@@ -304,9 +357,10 @@ impl Library {
         let mut all: BTreeMap<String, Listed> = BTreeMap::new();
         for file in SHIPPED {
             let (class, aliases) = match file.role {
-                Role::Material { class, aliases } => {
-                    (class.to_owned(), aliases.iter().map(|a| (*a).to_owned()).collect())
-                }
+                Role::Material { class, aliases } => (
+                    class.to_owned(),
+                    aliases.iter().map(|a| (*a).to_owned()).collect(),
+                ),
                 Role::Interface { .. } => ("interface".to_owned(), Vec::new()),
                 Role::Priors => continue,
             };
@@ -323,7 +377,11 @@ impl Library {
             all.entry(id.to_owned())
                 .and_modify(|l| {
                     l.from_user = true;
-                    let new: Vec<String> = aliases.iter().filter(|a| !l.aliases.contains(a)).cloned().collect();
+                    let new: Vec<String> = aliases
+                        .iter()
+                        .filter(|a| !l.aliases.contains(a))
+                        .cloned()
+                        .collect();
                     l.aliases.extend(new);
                 })
                 .or_insert_with(|| Listed {
@@ -340,7 +398,13 @@ impl Library {
         for i in &self.user_interfaces {
             add(&i.id, &i.name, "interface", &[]);
         }
-        let order = ["ferromagnet", "semiconductor", "metal", "barrier", "interface"];
+        let order = [
+            "ferromagnet",
+            "semiconductor",
+            "metal",
+            "barrier",
+            "interface",
+        ];
         let mut list: Vec<Listed> = all.into_values().collect();
         list.sort_by_key(|l| (order.iter().position(|o| *o == l.class), l.id.clone()));
         list
@@ -352,9 +416,13 @@ impl Library {
         let list = self.listed();
         let exact = |l: &&Listed| l.id == name || l.aliases.iter().any(|a| a == name);
         let loose = |l: &&Listed| {
-            l.id.eq_ignore_ascii_case(name) || l.aliases.iter().any(|a| a.eq_ignore_ascii_case(name))
+            l.id.eq_ignore_ascii_case(name)
+                || l.aliases.iter().any(|a| a.eq_ignore_ascii_case(name))
         };
-        list.iter().find(exact).or_else(|| list.iter().find(loose)).map(|l| l.id.clone())
+        list.iter()
+            .find(exact)
+            .or_else(|| list.iter().find(loose))
+            .map(|l| l.id.clone())
     }
 
     /// A material by id, with the user's records laid over it.
@@ -364,7 +432,9 @@ impl Library {
         }
         let (material, _) = self.material_with_replaced(id, faults)?;
         let shared = Rc::new(material);
-        self.materials.borrow_mut().insert(id.to_owned(), Rc::clone(&shared));
+        self.materials
+            .borrow_mut()
+            .insert(id.to_owned(), Rc::clone(&shared));
         Some(shared)
     }
 
@@ -383,10 +453,20 @@ impl Library {
             merged = Some(match merged {
                 None => m,
                 Some(mut base) => {
-                    base.aliases.extend(m.aliases.into_iter().filter(|a| !base.aliases.contains(a)).collect::<Vec<_>>());
+                    base.aliases.extend(
+                        m.aliases
+                            .into_iter()
+                            .filter(|a| !base.aliases.contains(a))
+                            .collect::<Vec<_>>(),
+                    );
                     lay(&mut base.values, m.values, |r| &r.common, &mut replaced);
                     lay(&mut base.pairs, m.pairs, |r| &r.common, &mut replaced);
-                    lay(&mut base.calibrations, m.calibrations, |r| &r.common, &mut replaced);
+                    lay(
+                        &mut base.calibrations,
+                        m.calibrations,
+                        |r| &r.common,
+                        &mut replaced,
+                    );
                     lay(&mut base.laws, m.laws, |r| &r.common, &mut replaced);
                     lay(&mut base.notes, m.notes, |r| &r.common, &mut replaced);
                     base
@@ -403,7 +483,9 @@ impl Library {
         }
         let (interface, _) = self.interface_with_replaced(id, faults)?;
         let shared = Rc::new(interface);
-        self.interfaces.borrow_mut().insert(id.to_owned(), Rc::clone(&shared));
+        self.interfaces
+            .borrow_mut()
+            .insert(id.to_owned(), Rc::clone(&shared));
         Some(shared)
     }
 
@@ -427,7 +509,12 @@ impl Library {
                 None => i,
                 Some(mut base) => {
                     lay(&mut base.contacts, i.contacts, |r| &r.common, &mut replaced);
-                    lay(&mut base.calibrations, i.calibrations, |r| &r.common, &mut replaced);
+                    lay(
+                        &mut base.calibrations,
+                        i.calibrations,
+                        |r| &r.common,
+                        &mut replaced,
+                    );
                     lay(&mut base.values, i.values, |r| &r.common, &mut replaced);
                     lay(&mut base.notes, i.notes, |r| &r.common, &mut replaced);
                     base
@@ -439,17 +526,32 @@ impl Library {
 
     /// Ids of the interfaces of a ferromagnet: `(id, barrier, channel)`.
     #[must_use]
-    pub fn interfaces_of(&self, ferromagnet: &str) -> Vec<(String, Option<String>, Option<String>)> {
+    pub fn interfaces_of(
+        &self,
+        ferromagnet: &str,
+    ) -> Vec<(String, Option<String>, Option<String>)> {
         let mut all: BTreeMap<String, (Option<String>, Option<String>)> = BTreeMap::new();
         for file in SHIPPED {
-            if let Role::Interface { ferromagnet: f, barrier, channel } = file.role
+            if let Role::Interface {
+                ferromagnet: f,
+                barrier,
+                channel,
+            } = file.role
                 && f == ferromagnet
             {
-                all.insert(file.id.to_owned(), (barrier.map(str::to_owned), channel.map(str::to_owned)));
+                all.insert(
+                    file.id.to_owned(),
+                    (barrier.map(str::to_owned), channel.map(str::to_owned)),
+                );
             }
         }
-        for i in self.user_interfaces.iter().filter(|i| i.ferromagnet == ferromagnet) {
-            all.entry(i.id.clone()).or_insert_with(|| (i.barrier.clone(), i.channel.clone()));
+        for i in self
+            .user_interfaces
+            .iter()
+            .filter(|i| i.ferromagnet == ferromagnet)
+        {
+            all.entry(i.id.clone())
+                .or_insert_with(|| (i.barrier.clone(), i.channel.clone()));
         }
         all.into_iter().map(|(id, (b, c))| (id, b, c)).collect()
     }
@@ -461,7 +563,12 @@ impl Library {
     }
 }
 
-fn lay<T>(base: &mut Vec<T>, own: Vec<T>, common: impl Fn(&T) -> &Common, replaced: &mut Vec<String>) {
+fn lay<T>(
+    base: &mut Vec<T>,
+    own: Vec<T>,
+    common: impl Fn(&T) -> &Common,
+    replaced: &mut Vec<String>,
+) {
     for record in own {
         let id = common(&record).id.clone();
         if let Some(old) = base.iter_mut().find(|r| common(r).id == id) {

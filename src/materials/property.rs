@@ -32,15 +32,30 @@ const fn property(
     needs_temperature: bool,
     feeds: Use,
 ) -> Property {
-    Property { name, kind, needs_temperature, feeds }
+    Property {
+        name,
+        kind,
+        needs_temperature,
+        feeds,
+    }
 }
 
 /// All properties of value records.
 pub static PROPERTIES: &[Property] = &[
     property("resistivity", &kind::RESISTIVITY, true, Use::Model),
     property("conductivity", &kind::CONDUCTIVITY, true, Use::Model),
-    property("spin_diffusion_length", &kind::SPIN_DIFFUSION_LENGTH, true, Use::Model),
-    property("resistivity_length_product", &kind::RHO_LAMBDA, false, Use::Model),
+    property(
+        "spin_diffusion_length",
+        &kind::SPIN_DIFFUSION_LENGTH,
+        true,
+        Use::Model,
+    ),
+    property(
+        "resistivity_length_product",
+        &kind::RHO_LAMBDA,
+        false,
+        Use::Model,
+    ),
     property("spin_lifetime", &kind::SPIN_LIFETIME, true, Use::Reference),
     property("diffusion_constant", &kind::DIFFUSION, true, Use::Reference),
     property("mobility", &kind::MOBILITY, true, Use::Reference),
@@ -51,18 +66,58 @@ pub static PROPERTIES: &[Property] = &[
     property("ionization_energy", &kind::ENERGY, false, Use::Reference),
     property("barrier_height", &kind::ENERGY, false, Use::Reference),
     property("barrier_mass", &kind::EFFECTIVE_MASS, false, Use::Reference),
-    property("relative_permittivity", &kind::PERMITTIVITY, false, Use::Reference),
-    property("effective_mass", &kind::EFFECTIVE_MASS, false, Use::Reference),
-    property("density_of_states_mass", &kind::EFFECTIVE_MASS, false, Use::Reference),
-    property("lattice_constant", &kind::LATTICE_LENGTH, false, Use::Reference),
+    property(
+        "relative_permittivity",
+        &kind::PERMITTIVITY,
+        false,
+        Use::Reference,
+    ),
+    property(
+        "effective_mass",
+        &kind::EFFECTIVE_MASS,
+        false,
+        Use::Reference,
+    ),
+    property(
+        "density_of_states_mass",
+        &kind::EFFECTIVE_MASS,
+        false,
+        Use::Reference,
+    ),
+    property(
+        "lattice_constant",
+        &kind::LATTICE_LENGTH,
+        false,
+        Use::Reference,
+    ),
     property("monolayer", &kind::LATTICE_LENGTH, false, Use::Model),
-    property("curie_temperature", &kind::TEMPERATURE, false, Use::Reference),
-    property("saturation_magnetization", &kind::MAGNETIZATION, true, Use::Reference),
+    property(
+        "curie_temperature",
+        &kind::TEMPERATURE,
+        false,
+        Use::Reference,
+    ),
+    property(
+        "saturation_magnetization",
+        &kind::MAGNETIZATION,
+        true,
+        Use::Reference,
+    ),
     property("intrinsic_density", &kind::DOPING, true, Use::Reference),
     property("density_of_states", &kind::DOPING, true, Use::Reference),
     property("g_factor", &kind::NUMBER, false, Use::Reference),
-    property("point_contact_polarization", &kind::SPIN_POLARIZATION, false, Use::CheckOnly),
-    property("photoemission_polarization", &kind::SPIN_POLARIZATION, false, Use::CheckOnly),
+    property(
+        "point_contact_polarization",
+        &kind::SPIN_POLARIZATION,
+        false,
+        Use::CheckOnly,
+    ),
+    property(
+        "photoemission_polarization",
+        &kind::SPIN_POLARIZATION,
+        false,
+        Use::CheckOnly,
+    ),
 ];
 
 /// The property of that name.

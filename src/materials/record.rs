@@ -37,11 +37,17 @@ impl Obtained {
     /// The word.
     #[must_use]
     pub fn word(self) -> &'static str {
-        Self::WORDS.iter().find(|(_, o)| *o == self).map_or("", |(w, _)| w)
+        Self::WORDS
+            .iter()
+            .find(|(_, o)| *o == self)
+            .map_or("", |(w, _)| w)
     }
 
     pub(crate) fn rank(self) -> usize {
-        Self::WORDS.iter().position(|(_, o)| *o == self).unwrap_or(usize::MAX)
+        Self::WORDS
+            .iter()
+            .position(|(_, o)| *o == self)
+            .unwrap_or(usize::MAX)
     }
 }
 
@@ -215,7 +221,10 @@ impl ContactKind {
     /// The word.
     #[must_use]
     pub fn word(self) -> &'static str {
-        Self::WORDS.iter().find(|(_, k)| *k == self).map_or("", |(w, _)| w)
+        Self::WORDS
+            .iter()
+            .find(|(_, k)| *k == self)
+            .map_or("", |(w, _)| w)
     }
 
     /// Whether its γ may be fed to the model.
@@ -314,7 +323,10 @@ impl Class {
     /// The word.
     #[must_use]
     pub fn word(self) -> &'static str {
-        Self::WORDS.iter().find(|(_, k)| *k == self).map_or("", |(w, _)| w)
+        Self::WORDS
+            .iter()
+            .find(|(_, k)| *k == self)
+            .map_or("", |(w, _)| w)
     }
 }
 

@@ -50,7 +50,9 @@ impl References {
         let mut at = 0;
         while let Some(offset) = text[at..].find('@') {
             let start = at + offset;
-            let Some(open) = text[start..].find('{').map(|o| start + o) else { break };
+            let Some(open) = text[start..].find('{').map(|o| start + o) else {
+                break;
+            };
             let mut depth = 0_usize;
             let mut end = open;
             for (i, b) in bytes.iter().enumerate().skip(open) {
@@ -72,7 +74,11 @@ impl References {
             }
             at = end.max(start + 1);
         }
-        Self { text: text.to_owned(), entries, duplicates }
+        Self {
+            text: text.to_owned(),
+            entries,
+            duplicates,
+        }
     }
 
     /// Lays another BibTeX text over this one: its entries come first.
@@ -82,7 +88,8 @@ impl References {
         self.text.push('\n');
         self.text.push_str(text);
         for (key, range) in other.entries {
-            self.entries.insert(key, range.start + shift..range.end + shift);
+            self.entries
+                .insert(key, range.start + shift..range.end + shift);
         }
         self.duplicates.extend(other.duplicates);
     }
@@ -117,13 +124,18 @@ impl References {
 }
 
 fn field(entry: &Entry, name: &str) -> Option<String> {
-    entry.get(name).map(|chunks| chunks.format_verbatim()).filter(|s| !s.trim().is_empty())
+    entry
+        .get(name)
+        .map(|chunks| chunks.format_verbatim())
+        .filter(|s| !s.trim().is_empty())
 }
 
 fn year(entry: &Entry) -> String {
     match entry.date() {
         Ok(PermissiveType::Typed(_)) | Ok(PermissiveType::Chunks(_)) | Err(_) => {
-            field(entry, "year").or_else(|| field(entry, "date")).unwrap_or_else(|| "no year".to_owned())
+            field(entry, "year")
+                .or_else(|| field(entry, "date"))
+                .unwrap_or_else(|| "no year".to_owned())
         }
     }
 }
@@ -131,14 +143,22 @@ fn year(entry: &Entry) -> String {
 fn reference(entry: &Entry) -> Reference {
     let mut people: Vec<String> = entry
         .author()
-        .map(|authors| authors.into_iter().map(|a| a.name).filter(|n| !n.is_empty()).collect())
+        .map(|authors| {
+            authors
+                .into_iter()
+                .map(|a| a.name)
+                .filter(|n| !n.is_empty())
+                .collect()
+        })
         .unwrap_or_default();
     // BibTeX writes a list that goes on as `and others`.
     let goes_on = people.iter().any(|p| p == "others");
     people.retain(|p| p != "others");
     let year = year(entry);
     let surname = people.first().cloned().unwrap_or_else(|| {
-        field(entry, "author").or_else(|| field(entry, "title")).unwrap_or_else(|| entry.key.clone())
+        field(entry, "author")
+            .or_else(|| field(entry, "title"))
+            .unwrap_or_else(|| entry.key.clone())
     });
     let short_authors = match people.len() {
         _ if goes_on => format!("{surname} et al."),
@@ -181,5 +201,10 @@ fn reference(entry: &Entry) -> Reference {
         "not opened" => Some(Opened::NotOpened),
         _ => None,
     });
-    Reference { key: entry.key.clone(), short: format!("{short_authors} {year}"), full, opened }
+    Reference {
+        key: entry.key.clone(),
+        short: format!("{short_authors} {year}"),
+        full,
+        opened,
+    }
 }

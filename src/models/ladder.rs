@@ -203,7 +203,10 @@ fn rung_of(element: &Element) -> Rung {
                 }
             };
             Rung {
-                resistance: interface.spin_resistance.resistance_area(interface.asymmetry).si(),
+                resistance: interface
+                    .spin_resistance
+                    .resistance_area(interface.asymmetry)
+                    .si(),
                 reduced: delta,
                 ..rung
             }
@@ -239,7 +242,11 @@ fn rise(rung: &Rung, own: f64, left: At, right: At) -> f64 {
     let by_accumulation = left.accumulation.abs() + right.accumulation.abs();
     let from_current = rung.reach * ((own - left.current) + (own - right.current));
     let from_accumulation = right.accumulation - left.accumulation;
-    if by_current <= 4.0 * by_accumulation { from_current } else { from_accumulation }
+    if by_current <= 4.0 * by_accumulation {
+        from_current
+    } else {
+        from_accumulation
+    }
 }
 
 impl Stack {
@@ -279,20 +286,42 @@ impl Stack {
     }
 
     /// Ratio form of an end whose source is weighed by `weight(asymmetry, turns)`.
-    fn end(&self, end: &End, outermost: Option<usize>, weight: impl Fn(f64, bool) -> f64) -> Passed {
+    fn end(
+        &self,
+        end: &End,
+        outermost: Option<usize>,
+        weight: impl Fn(f64, bool) -> f64,
+    ) -> Passed {
         match end {
             End::SemiInfinite(layer) => {
                 let r = layer.spin_resistance().si();
                 let turns = layer.magnetization == Magnetization::Free;
                 let beta = weight(layer.asymmetry.si() * layer.magnetization.sign(), turns);
-                Passed { num: r, den: 1.0, src: beta * r }
+                Passed {
+                    num: r,
+                    den: 1.0,
+                    src: beta * r,
+                }
             }
-            End::SpinSink => Passed { num: 0.0, den: 1.0, src: 0.0 },
-            End::Reflecting => Passed { num: 1.0, den: 0.0, src: 0.0 },
+            End::SpinSink => Passed {
+                num: 0.0,
+                den: 1.0,
+                src: 0.0,
+            },
+            End::Reflecting => Passed {
+                num: 1.0,
+                den: 0.0,
+                src: 0.0,
+            },
             End::FedInPlane => {
-                let src =
-                    outermost.map_or(0.0, |i| weight(self.rungs[i].asymmetry, self.rungs[i].turns));
-                Passed { num: 1.0, den: 0.0, src }
+                let src = outermost.map_or(0.0, |i| {
+                    weight(self.rungs[i].asymmetry, self.rungs[i].turns)
+                });
+                Passed {
+                    num: 1.0,
+                    den: 0.0,
+                    src,
+                }
             }
         }
     }
@@ -302,12 +331,18 @@ impl Stack {
         let last = self.rungs.len().checked_sub(1);
         let left = self.end(&self.left, last.map(|_| 0), weight);
         let right = self.end(&self.right, last, weight);
-        let mut faces = sweep(left, right, &self.rungs, |rung| weight(rung.asymmetry, rung.turns));
+        let mut faces = sweep(left, right, &self.rungs, |rung| {
+            weight(rung.asymmetry, rung.turns)
+        });
         // At the far face of a strip fed in its plane u' = 0, so that u there is u of the near face times
         // sech(t/λ); what the sweep gives there is the difference of two terms of the size of βr·coth(t/λ).
         for (fed, outer, inner) in [
             (self.fed(true), 0, 1),
-            (self.fed(false), self.rungs.len(), self.rungs.len().saturating_sub(1)),
+            (
+                self.fed(false),
+                self.rungs.len(),
+                self.rungs.len().saturating_sub(1),
+            ),
         ] {
             if let Some(k) = fed {
                 faces[outer] = At {
@@ -332,9 +367,9 @@ impl Stack {
                 layer.asymmetry.si() * layer.magnetization.sign(),
                 layer.magnetization == Magnetization::Free,
             ),
-            End::FedInPlane => {
-                self.fed(left).map_or(0.0, |k| weight(self.rungs[k].asymmetry, self.rungs[k].turns))
-            }
+            End::FedInPlane => self.fed(left).map_or(0.0, |k| {
+                weight(self.rungs[k].asymmetry, self.rungs[k].turns)
+            }),
             End::SpinSink | End::Reflecting => 0.0,
         }
     }
@@ -363,8 +398,10 @@ impl Stack {
         let mut faces = self.driven(weight);
         let first = faces.first().map_or(0.0, |f| f.accumulation);
         let last = faces.last().map_or(0.0, |f| f.accumulation);
-        let outer_left = Self::outer_resistance(&self.left) + self.outer_asymmetry(true, weight) * first;
-        let outer_right = Self::outer_resistance(&self.right) - self.outer_asymmetry(false, weight) * last;
+        let outer_left =
+            Self::outer_resistance(&self.left) + self.outer_asymmetry(true, weight) * first;
+        let outer_right =
+            Self::outer_resistance(&self.right) - self.outer_asymmetry(false, weight) * last;
         let mut potential = outer_right;
         let mut right: Option<At> = None;
         for (k, at) in faces.iter_mut().enumerate().rev() {
@@ -392,7 +429,11 @@ impl Stack {
         } else {
             (&self.right, self.rungs.len().checked_sub(1))
         };
-        if matches!(end, End::FedInPlane) { index } else { None }
+        if matches!(end, End::FedInPlane) {
+            index
+        } else {
+            None
+        }
     }
 
     /// What an end medium adds to RA besides its accumulation.
@@ -418,7 +459,8 @@ impl Stack {
         let faces = self.driven(drive);
         let first = faces.first().map_or(0.0, |f| f.accumulation);
         let last = faces.last().map_or(0.0, |f| f.accumulation);
-        let mut sum = self.outer_asymmetry(true, read) * first - self.outer_asymmetry(false, read) * last;
+        let mut sum =
+            self.outer_asymmetry(true, read) * first - self.outer_asymmetry(false, read) * last;
         for (i, rung) in self.rungs.iter().enumerate() {
             // What reads is not driven: its own source is 0 here.
             sum += read(rung.asymmetry, rung.turns) * rise(rung, 0.0, faces[i], faces[i + 1]);
@@ -457,7 +499,13 @@ impl Stack {
     /// Spin current, accumulation and mean potential inside element `k` at `fraction` of its thickness,
     /// between the two faces of `solution`; on an interface without loss, the nearer face.
     #[must_use]
-    pub fn inside(&self, solution: &Solution, k: usize, fraction: f64, state: State) -> Option<Face> {
+    pub fn inside(
+        &self,
+        solution: &Solution,
+        k: usize,
+        fraction: f64,
+        state: State,
+    ) -> Option<Face> {
         let (left, right) = (solution.faces.get(k)?, solution.faces.get(k + 1)?);
         let rung = self.rungs.get(k)?;
         if rung.shunt <= 0.0 {
@@ -483,9 +531,8 @@ impl Stack {
             right.accumulation_per_current_density.si(),
         );
         let u = ul * wl + ur * wr;
-        let potential = left.potential_per_current_density.si()
-            - rung.resistance * x
-            - b * (u - ul);
+        let potential =
+            left.potential_per_current_density.si() - rung.resistance * x - b * (u - ul);
         Some(Face {
             polarization: CurrentSpinPolarization::from_si(b + (pl - b) * wl + (pr - b) * wr),
             accumulation_per_current_density: ResistanceTimesArea::from_si(u),

@@ -68,20 +68,31 @@ impl Passed {
     fn after(self, rung: &Rung, asymmetry: f64) -> Self {
         // What does not depend on the part passed is multiplied first: the chain from rung to rung is
         // one product and one sum for the impedance, and little more for the source.
-        let (lift, bend) = (asymmetry * rung.series, asymmetry * (rung.reach * rung.shunt));
+        let (lift, bend) = (
+            asymmetry * rung.series,
+            asymmetry * (rung.reach * rung.shunt),
+        );
         let next = Self {
             num: self.num + rung.series * self.den,
             den: self.den + rung.shunt * self.num,
             src: self.src * rung.pass + (lift * self.den + bend * self.num),
         };
         // Neither is negative, so the sum stands for the larger of the two.
-        if next.num + next.den > CEILING { next.lowered() } else { next }
+        if next.num + next.den > CEILING {
+            next.lowered()
+        } else {
+            next
+        }
     }
 
     #[cold]
     fn lowered(self) -> Self {
         let down = CEILING.recip();
-        Self { num: self.num * down, den: self.den * down, src: self.src * down }
+        Self {
+            num: self.num * down,
+            den: self.den * down,
+            src: self.src * down,
+        }
     }
 }
 
@@ -99,12 +110,20 @@ pub(super) struct At {
 impl At {
     /// A face not yet told: its three numbers are those of the part to its left.
     fn holding(left: Passed) -> Self {
-        Self { current: left.num, accumulation: left.den, potential: left.src }
+        Self {
+            current: left.num,
+            accumulation: left.den,
+            potential: left.src,
+        }
     }
 
     /// The part that [`At::holding`] put there.
     fn held(self) -> Passed {
-        Passed { num: self.current, den: self.accumulation, src: self.potential }
+        Passed {
+            num: self.current,
+            den: self.accumulation,
+            src: self.potential,
+        }
     }
 }
 

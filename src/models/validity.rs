@@ -77,10 +77,16 @@ pub fn channel(
     let drift = layer.resistivity.si() * current_density.si() * layer.length.si();
     let mut caveats = Vec::new();
     if u > thermal.si() {
-        caveats.push(Caveat::Nonlinear { accumulation: ElectricPotential::from_si(u), thermal });
+        caveats.push(Caveat::Nonlinear {
+            accumulation: ElectricPotential::from_si(u),
+            thermal,
+        });
     }
     if drift > thermal.si() {
-        caveats.push(Caveat::Drift { voltage: ElectricPotential::from_si(drift), thermal });
+        caveats.push(Caveat::Drift {
+            voltage: ElectricPotential::from_si(drift),
+            thermal,
+        });
     }
     caveats
 }

@@ -61,9 +61,11 @@ mod tests {
         for i in 1..2000 {
             let t = f64::from(i) * 0.005;
             let got = reduced(t);
-            for (a, b) in
-                [(got.sech, t.cosh().recip()), (got.tanh, t.tanh()), (got.half_tanh, (0.5 * t).tanh())]
-            {
+            for (a, b) in [
+                (got.sech, t.cosh().recip()),
+                (got.tanh, t.tanh()),
+                (got.half_tanh, (0.5 * t).tanh()),
+            ] {
                 assert!((a / b - 1.0).abs() < 2e-15, "T = {t}: {a} against {b}");
             }
         }
@@ -74,7 +76,10 @@ mod tests {
         for i in 10..7000 {
             let t = f64::from(i) * 0.1;
             let (got, want) = (reduced(t).sech, t.cosh().recip());
-            assert!((got / want - 1.0).abs() < 2e-15, "T = {t}: {got} against {want}");
+            assert!(
+                (got / want - 1.0).abs() < 2e-15,
+                "T = {t}: {got} against {want}"
+            );
         }
     }
 
@@ -86,6 +91,9 @@ mod tests {
         let none = reduced(0.0);
         assert_eq!((none.sech, none.tanh, none.half_tanh), (1.0, 0.0, 0.0));
         let thin = reduced(1e-200);
-        assert_eq!((thin.sech, thin.tanh, thin.half_tanh), (1.0, 1e-200, 5e-201));
+        assert_eq!(
+            (thin.sech, thin.tanh, thin.half_tanh),
+            (1.0, 1e-200, 5e-201)
+        );
     }
 }

@@ -37,7 +37,7 @@ const MOST_STEPS: u32 = 200;
 /// [`RootFault`]; never a number that was not found.
 ///
 /// # Source
-/// Brent, Algorithms for Minimization without Derivatives, Prentice-Hall, 1973, chapter 4 [recalled].
+/// Brent, Algorithms for Minimization without Derivatives, Prentice-Hall, 1973, chapter 4 (recalled).
 pub fn bracketed_root(
     mut f: impl FnMut(f64) -> f64,
     a: f64,
@@ -106,13 +106,20 @@ pub fn bracketed_root(
             before_last = half;
         }
         (a, fa) = (b, fb);
-        b += if step.abs() > reach { step } else { reach.copysign(half) };
+        b += if step.abs() > reach {
+            step
+        } else {
+            reach.copysign(half)
+        };
         fb = f(b);
         if !fb.is_finite() {
             return Err(RootFault::NotFinite { at: b });
         }
     }
-    Err(RootFault::NotConverged { steps: MOST_STEPS, width: (c - b).abs() })
+    Err(RootFault::NotConverged {
+        steps: MOST_STEPS,
+        width: (c - b).abs(),
+    })
 }
 
 /// Place and value of the largest value of `f` on `[a, b]` by golden-section search: the function must
@@ -163,7 +170,10 @@ mod tests {
             bracketed_root(|x| x * x + 1.0, -1.0, 1.0, 0.0),
             Err(RootFault::NoSignChange { .. })
         ));
-        assert!(matches!(bracketed_root(|_| f64::NAN, 0.0, 1.0, 0.0), Err(RootFault::NotFinite { .. })));
+        assert!(matches!(
+            bracketed_root(|_| f64::NAN, 0.0, 1.0, 0.0),
+            Err(RootFault::NotFinite { .. })
+        ));
     }
 
     #[test]

@@ -50,11 +50,17 @@ pub fn keep_whole(t: &mut Table, columns: &[usize]) {
 /// The lines of a table without trailing blanks and without the outer rules.
 #[must_use]
 pub fn table_lines(t: &Table) -> Vec<String> {
-    let lines: Vec<String> =
-        t.lines().map(|l| l.replace('\u{a0}', " ").trim_end().to_owned()).collect();
+    let lines: Vec<String> = t
+        .lines()
+        .map(|l| l.replace('\u{a0}', " ").trim_end().to_owned())
+        .collect();
     let rule = |l: &String| !l.is_empty() && l.chars().all(|c| "─═╌┄┈-= ".contains(c));
-    let inner: Vec<String> =
-        lines.iter().enumerate().filter(|(i, l)| !(rule(l) && (*i == 0 || *i + 1 == lines.len()))).map(|(_, l)| l.clone()).collect();
+    let inner: Vec<String> = lines
+        .iter()
+        .enumerate()
+        .filter(|(i, l)| !(rule(l) && (*i == 0 || *i + 1 == lines.len())))
+        .map(|(_, l)| l.clone())
+        .collect();
     // A rule between every two rows would double the length: keep the one under the head.
     let mut seen = false;
     inner
@@ -99,12 +105,20 @@ pub fn value_of(input: &Input) -> String {
 
 fn source_of(a: &Assessment, input: &Input) -> String {
     match &input.provenance.origin {
-        Origin::Design { note, overrides, .. } => match (overrides, note) {
+        Origin::Design {
+            note, overrides, ..
+        } => match (overrides, note) {
             (true, Some(note)) => format!("design, in place of the library: {note}"),
             (true, None) => "design, in place of the library".to_owned(),
             (false, _) => "design".to_owned(),
         },
-        Origin::Record { id, source, decided: d, among, obtained } => {
+        Origin::Record {
+            id,
+            source,
+            decided: d,
+            among,
+            obtained,
+        } => {
             let footnote = source
                 .as_ref()
                 .and_then(|key| a.references.iter().position(|(k, _)| k == key))
@@ -114,12 +128,28 @@ fn source_of(a: &Assessment, input: &Input) -> String {
                 .provenance
                 .marks
                 .iter()
-                .filter(|m| !matches!(m, Mark::Recalled | Mark::Derived | Mark::Estimated | Mark::CommonPractice))
+                .filter(|m| {
+                    !matches!(
+                        m,
+                        Mark::Recalled | Mark::Derived | Mark::Estimated | Mark::CommonPractice
+                    )
+                })
                 .map(mark)
                 .collect();
-            let marks = if marks.is_empty() { String::new() } else { format!("; {}", marks.join("; ")) };
-            let unread = if *obtained == "recalled" { ", not read" } else { "" };
-            format!("{id}{footnote}, {obtained}{unread} ({}){marks}", decided(*d, *among))
+            let marks = if marks.is_empty() {
+                String::new()
+            } else {
+                format!("; {}", marks.join("; "))
+            };
+            let unread = if *obtained == "recalled" {
+                ", not read"
+            } else {
+                ""
+            };
+            format!(
+                "{id}{footnote}, {obtained}{unread} ({}){marks}",
+                decided(*d, *among)
+            )
         }
     }
 }
@@ -127,7 +157,10 @@ fn source_of(a: &Assessment, input: &Input) -> String {
 /// One line an input: name, value with spread, share. Inputs that follow each other and come from the same
 /// place are told it once, below them.
 fn inputs(a: &Assessment, width: usize) -> Vec<String> {
-    let mut lines = heading("Design as understood: value, share of the answer's spread, where it comes from", width);
+    let mut lines = heading(
+        "Design as understood: value, share of the answer's spread, where it comes from",
+        width,
+    );
     let mut all: Vec<(&Input, String)> = a
         .device
         .table
@@ -135,12 +168,21 @@ fn inputs(a: &Assessment, width: usize) -> Vec<String> {
         .iter()
         .enumerate()
         .map(|(i, input)| (input, plain(&share(a, i))))
-        .chain(a.device.likely.iter().map(|l| (&l.input, "window only".to_owned())))
+        .chain(
+            a.device
+                .likely
+                .iter()
+                .map(|l| (&l.input, "window only".to_owned())),
+        )
         .collect();
     // In the order of the stack, not in the order in which they were resolved.
     let place = |input: &Input| {
         let path = input.name.rsplit_once('.').map_or("", |(p, _)| p);
-        a.device.names.iter().position(|n| n.path == path).unwrap_or(usize::MAX)
+        a.device
+            .names
+            .iter()
+            .position(|n| n.path == path)
+            .unwrap_or(usize::MAX)
     };
     all.sort_by_key(|(input, _)| place(input));
     let mut part = "";
@@ -152,20 +194,23 @@ fn inputs(a: &Assessment, width: usize) -> Vec<String> {
         }
         let name = key.replace('_', " ");
         let value = value_of(input);
-        lines.push(format!("  {name:<27}  {value:<24} {share:>6}").trim_end().to_owned());
+        lines.push(
+            format!("  {name:<27}  {value:<24} {share:>6}")
+                .trim_end()
+                .to_owned(),
+        );
         let source = source_of(a, input);
-        let same_next = all
-            .get(i + 1)
-            .is_some_and(|(next, _)| {
-                next.name.rsplit_once('.').map_or("", |(p, _)| p) == path && source_of(a, next) == source
-            });
+        let same_next = all.get(i + 1).is_some_and(|(next, _)| {
+            next.name.rsplit_once('.').map_or("", |(p, _)| p) == path
+                && source_of(a, next) == source
+        });
         if !same_next {
             lines.extend(marked("     ", &source, width));
         }
     }
     lines.extend(wrap(
         &format!(
-            "Share: part of Σ(change)² of the {} when each input moves by one standard deviation, one at a time; – where an input has no spread to move.",
+            "Share: part of Σ(change)² of the {} when each input moves by one standard deviation, one at a time; the same number of one record moves at once wherever it stands; – where an input has no spread to move.",
             target_name(a.wish.target)
         ),
         width,
@@ -175,7 +220,11 @@ fn inputs(a: &Assessment, width: usize) -> Vec<String> {
 
 fn layer_row(a: &Assessment, at: Position, layer: &Layer, place: &str) -> Vec<String> {
     let t = layer.thickness.si();
-    let beta = if a.device.is_ferromagnet(at) { format!("{:.3}", layer.asymmetry.si()) } else { "–".to_owned() };
+    let beta = if a.device.is_ferromagnet(at) {
+        format!("{:.3}", layer.asymmetry.si())
+    } else {
+        "–".to_owned()
+    };
     let turns = match (a.device.is_ferromagnet(at), layer.magnetization) {
         (false, _) => "–",
         (true, Magnetization::Fixed) => "fixed",
@@ -186,9 +235,17 @@ fn layer_row(a: &Assessment, at: Position, layer: &Layer, place: &str) -> Vec<St
         whole(&format!("{}{place}", position_name(&a.device, at))),
         whole(&with_digits(layer.resistivity.si(), Scale::Resistivity, 3)),
         whole(&with_digits(layer.length.si(), Scale::Length, 3)),
-        if t.is_finite() { whole(&with_digits(t, Scale::Length, 3)) } else { "∞".to_owned() },
+        if t.is_finite() {
+            whole(&with_digits(t, Scale::Length, 3))
+        } else {
+            "∞".to_owned()
+        },
         beta,
-        whole(&with_digits(layer.spin_resistance().si(), Scale::ResistanceArea, 3)),
+        whole(&with_digits(
+            layer.spin_resistance().si(),
+            Scale::ResistanceArea,
+            3,
+        )),
         turns.to_owned(),
     ]
 }
@@ -203,9 +260,23 @@ fn end_word(end: &EndPlan) -> Option<&'static str> {
 }
 
 fn stack(a: &Assessment, width: usize) -> Vec<String> {
-    let mut lines = heading(&format!("Stack, from left to right (written as {})", summary::written(a.written)), width);
+    let mut lines = heading(
+        &format!(
+            "Stack, from left to right (written as {})",
+            summary::written(a.written)
+        ),
+        width,
+    );
     let mut t = table(
-        &["element", "ρ or RA", "λ or δ", "t", "β or γ", "r or r_b*", "magnet"],
+        &[
+            "element",
+            "ρ or RA",
+            "λ or δ",
+            "t",
+            "β or γ",
+            "r or r_b*",
+            "magnet",
+        ],
         width,
         &[1, 2, 3, 4, 5],
     );
@@ -219,7 +290,10 @@ fn stack(a: &Assessment, width: usize) -> Vec<String> {
             t.add_row(layer_row(a, Position::LeftEnd, layer, ", end"));
         }
         _ => {
-            t.add_row(empty(&format!("({})", end_word(&a.device.left).unwrap_or("end"))));
+            t.add_row(empty(&format!(
+                "({})",
+                end_word(&a.device.left).unwrap_or("end")
+            )));
         }
     }
     for (i, element) in a.blueprint.elements.iter().enumerate() {
@@ -234,11 +308,31 @@ fn stack(a: &Assessment, width: usize) -> Vec<String> {
                 let none = x.spin_resistance.si() <= 0.0;
                 t.add_row(vec![
                     position_name(&a.device, at),
-                    if none { "none".to_owned() } else { whole(&with_digits(ra, Scale::ResistanceArea, 3)) },
-                    if delta > 0.0 { format!("{delta:.2}") } else { "–".to_owned() },
+                    if none {
+                        "none".to_owned()
+                    } else {
+                        whole(&with_digits(ra, Scale::ResistanceArea, 3))
+                    },
+                    if delta > 0.0 {
+                        format!("{delta:.2}")
+                    } else {
+                        "–".to_owned()
+                    },
                     "–".to_owned(),
-                    if none { "–".to_owned() } else { format!("{:.3}", x.asymmetry.si()) },
-                    if none { "–".to_owned() } else { whole(&with_digits(x.spin_resistance.si(), Scale::ResistanceArea, 3)) },
+                    if none {
+                        "–".to_owned()
+                    } else {
+                        format!("{:.3}", x.asymmetry.si())
+                    },
+                    if none {
+                        "–".to_owned()
+                    } else {
+                        whole(&with_digits(
+                            x.spin_resistance.si(),
+                            Scale::ResistanceArea,
+                            3,
+                        ))
+                    },
                     match (none, x.magnetization) {
                         (true, _) => "–".to_owned(),
                         (_, Magnetization::Free) => "free".to_owned(),
@@ -254,11 +348,16 @@ fn stack(a: &Assessment, width: usize) -> Vec<String> {
             t.add_row(layer_row(a, Position::RightEnd, layer, ", end"));
         }
         _ => {
-            t.add_row(empty(&format!("({})", end_word(&a.device.right).unwrap_or("end"))));
+            t.add_row(empty(&format!(
+                "({})",
+                end_word(&a.device.right).unwrap_or("end")
+            )));
         }
     }
     lines.extend(table_lines(&t));
-    let has_end = [&a.device.left, &a.device.right].iter().any(|e| end_word(e).is_none());
+    let has_end = [&a.device.left, &a.device.right]
+        .iter()
+        .any(|e| end_word(e).is_none());
     if has_end {
         lines.extend(wrap("An outermost layer marked `end` is taken as many λ thick; its thickness, or λ where none is stated, counts in RA only.", width));
     }
@@ -266,33 +365,51 @@ fn stack(a: &Assessment, width: usize) -> Vec<String> {
 }
 
 fn resistances(a: &Assessment, width: usize) -> Vec<String> {
-    let Some(m) = &a.mismatch else { return Vec::new() };
+    let Some(m) = &a.mismatch else {
+        return Vec::new();
+    };
     let mut lines = heading("Spin resistances at the injector", width);
     let mut row = |label: &str, value: String| lines.extend(labelled(label, &value, width));
     row("r_F of the ferromagnet", area(m.r_ferromagnet.si()));
-    row("r_N of the channel", format!(
-        "{}, {} times r_F",
-        area(m.r_channel.si()),
-        factor(m.r_channel.si() / m.r_ferromagnet.si())
-    ));
+    row(
+        "r_N of the channel",
+        format!(
+            "{}, {} times r_F",
+            area(m.r_channel.si()),
+            factor(m.r_channel.si() / m.r_ferromagnet.si())
+        ),
+    );
     if m.r_interface.si() > 0.0 {
-        row("r_b* of the interface", format!(
-            "{}, {} times r_N, {} times r_F",
-            area(m.r_interface.si()),
-            factor(m.r_interface.si() / m.r_channel.si()),
-            factor(m.r_interface.si() / m.r_ferromagnet.si())
-        ));
-        row("RA of the interface", format!(
-            "{} with both channels in parallel, r_b*(1−γ²); a measurement on this stack reads {}, r_b*(1−γp)",
-            area(m.resistance_area.si()),
-            area(m.measured.si())
-        ));
+        row(
+            "r_b* of the interface",
+            format!(
+                "{}, {} times r_N, {} times r_F",
+                area(m.r_interface.si()),
+                factor(m.r_interface.si() / m.r_channel.si()),
+                factor(m.r_interface.si() / m.r_ferromagnet.si())
+            ),
+        );
+        row(
+            "RA of the interface",
+            format!(
+                "{} with both channels in parallel, r_b*(1−γ²); a measurement on this stack reads {}, r_b*(1−γp)",
+                area(m.resistance_area.si()),
+                area(m.measured.si())
+            ),
+        );
     }
-    row("seen from the channel's face", format!(
-        "contact {}, channel {}",
-        area(m.contact.si()),
-        if m.channel.si().is_finite() { area(m.channel.si()) } else { "closed".to_owned() }
-    ));
+    row(
+        "seen from the channel's face",
+        format!(
+            "contact {}, channel {}",
+            area(m.contact.si()),
+            if m.channel.si().is_finite() {
+                area(m.channel.si())
+            } else {
+                "closed".to_owned()
+            }
+        ),
+    );
     if m.from_far_side.abs() > 0.0 {
         row("injected from this contact", percent(m.crossing));
         row("added by the far contact", percent(m.from_far_side));
@@ -311,14 +428,25 @@ fn place_name(a: &Assessment, face: usize) -> String {
         matches!(a.device.right, EndPlan::SemiInfinite(_)).then_some(Position::RightEnd)
     };
     let name = |at: Option<Position>, end: &EndPlan| {
-        at.map_or_else(|| end_word(end).unwrap_or("end").to_owned(), |at| position_name(&a.device, at))
+        at.map_or_else(
+            || end_word(end).unwrap_or("end").to_owned(),
+            |at| position_name(&a.device, at),
+        )
     };
-    format!("{} → {}", name(before, &a.device.left), name(after, &a.device.right))
+    format!(
+        "{} → {}",
+        name(before, &a.device.left),
+        name(after, &a.device.right)
+    )
 }
 
 fn potentials(a: &Assessment, width: usize) -> Vec<String> {
     let j = a.told_at.si();
-    let none = if a.device.current_density.is_some() { "" } else { " (the design states none)" };
+    let none = if a.device.current_density.is_some() {
+        ""
+    } else {
+        " (the design states none)"
+    };
     let told = format!("{}{none}", plain(&summary::current_density_text(j)));
     let mut lines = Vec::new();
     let states: &[(&str, &[Face])] = if a.device.has_two_states {
@@ -327,9 +455,20 @@ fn potentials(a: &Assessment, width: usize) -> Vec<String> {
         &[("", &a.faces[0])]
     };
     for (name, faces) in states {
-        let state = if name.is_empty() { String::new() } else { format!(", {name}") };
-        lines.extend(heading(&format!("Electrochemical potentials at the faces{state}, at {told}"), width));
-        let mut t = table(&["face", "p = J/j", "u = (V↑−V↓)/2", "V↑", "V↓"], width, &[1, 2, 3, 4]);
+        let state = if name.is_empty() {
+            String::new()
+        } else {
+            format!(", {name}")
+        };
+        lines.extend(heading(
+            &format!("Electrochemical potentials at the faces{state}, at {told}"),
+            width,
+        ));
+        let mut t = table(
+            &["face", "p = J/j", "u = (V↑−V↓)/2", "V↑", "V↓"],
+            width,
+            &[1, 2, 3, 4],
+        );
         for (k, f) in faces.iter().enumerate() {
             let u = f.accumulation_per_current_density.si() * j;
             let [up, down] = channel_potentials(f);
@@ -350,9 +489,15 @@ fn contact_windows(a: &Assessment, width: usize) -> Vec<String> {
     if a.contact_windows.is_empty() {
         return Vec::new();
     }
-    let mut lines = heading("Window of each contact alone, the others as they are", width);
+    let mut lines = heading(
+        "Window of each contact alone, the others as they are",
+        width,
+    );
     for (element, w) in &a.contact_windows {
-        let name = a.device.name(Position::Element(*element)).map_or(String::new(), |n| n.path.clone());
+        let name = a
+            .device
+            .name(Position::Element(*element))
+            .map_or(String::new(), |n| n.path.clone());
         lines.extend(labelled(&name, &summary::window_text(a, w), width));
     }
     lines
@@ -362,24 +507,40 @@ fn checks(a: &Assessment, width: usize) -> Vec<String> {
     if a.checks.is_empty() {
         return Vec::new();
     }
-    let mut lines = heading("Published values of this contact, shown beside the answer and never fed to it", width);
+    let mut lines = heading(
+        "Published values of this contact, shown beside the answer and never fed to it",
+        width,
+    );
     for c in &a.checks {
         let footnote = c
             .source
             .as_ref()
             .and_then(|key| a.references.iter().position(|(k, _)| k == key))
             .map_or(String::new(), |n| format!(" [{}]", n + 1));
-        let at = c.temperature.map_or(String::new(), |t| format!(" at {t} K"));
-        let recalled = if c.recalled { ", recalled, not read" } else { "" };
+        let at = c
+            .temperature
+            .map_or(String::new(), |t| format!(" at {t} K"));
+        let recalled = if c.recalled {
+            ", recalled, not read"
+        } else {
+            ""
+        };
         let (scale, what) = if c.is_resistance_area {
             (Scale::ResistanceArea, "RA")
         } else {
             (Scale::Percent, "polarization")
         };
         let value = with_spread(c.reading.si, &c.reading.spread, scale);
-        let label =
-            if c.is_resistance_area { "measured RA".to_owned() } else { format!("{} {what}", c.kind.word()) };
-        lines.extend(labelled(&label, &format!("{value}{at}, {}{footnote}{recalled}", c.record), width));
+        let label = if c.is_resistance_area {
+            "measured RA".to_owned()
+        } else {
+            format!("{} {what}", c.kind.word())
+        };
+        lines.extend(labelled(
+            &label,
+            &format!("{value}{at}, {}{footnote}{recalled}", c.record),
+            width,
+        ));
     }
     lines
 }
@@ -390,7 +551,11 @@ fn findings(a: &Assessment, width: usize) -> Vec<String> {
         lines.push("none".to_owned());
     }
     for f in &a.findings {
-        lines.extend(marked(severity_mark(f.severity()), &format!("{} [{}]", finding(f), f.rule_name()), width));
+        lines.extend(marked(
+            severity_mark(f.severity()),
+            &format!("{} [{}]", finding(f), f.rule_name()),
+            width,
+        ));
     }
     lines
 }
@@ -401,7 +566,9 @@ fn sources(a: &Assessment, width: usize) -> Vec<String> {
     }
     let mut lines = heading("Sources", width);
     for (i, (key, reference)) in a.references.iter().enumerate() {
-        let text = reference.as_ref().map_or_else(|| key.clone(), |r| r.full.clone());
+        let text = reference
+            .as_ref()
+            .map_or_else(|| key.clone(), |r| r.full.clone());
         lines.extend(marked(&format!("[{}]", i + 1), &text, width));
     }
     lines.extend(wrap("Model: Valet and Fert, Phys. Rev. B 48, 7099 (1993); Fert and Jaffrès, Phys. Rev. B 64, 184420 (2001): diffusive, linear, one-dimensional, collinear.", width));

@@ -35,8 +35,15 @@ pub fn wrap(text: &str, width: usize) -> Vec<String> {
 #[must_use]
 pub fn labelled(label: &str, value: &str, width: usize) -> Vec<String> {
     let long = width_of(label) >= LABEL;
-    let mut lines: Vec<String> = if long { vec![label.to_owned()] } else { Vec::new() };
-    for (i, line) in wrap(value, width.saturating_sub(LABEL)).into_iter().enumerate() {
+    let mut lines: Vec<String> = if long {
+        vec![label.to_owned()]
+    } else {
+        Vec::new()
+    };
+    for (i, line) in wrap(value, width.saturating_sub(LABEL))
+        .into_iter()
+        .enumerate()
+    {
         let left = if i == 0 && !long { label } else { "" };
         lines.push(format!("{left:<LABEL$}{line}").trim_end().to_owned());
     }

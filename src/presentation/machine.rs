@@ -128,44 +128,91 @@ pub fn assessment(a: &Assessment) -> Value {
         doc.insert(key.to_owned(), value);
     };
     put("format", json!(FORMAT));
-    put("program", json!(format!("injectance {}", env!("CARGO_PKG_VERSION"))));
+    put(
+        "program",
+        json!(format!("injectance {}", env!("CARGO_PKG_VERSION"))),
+    );
     put("design", json!(a.name));
     put("title", json!(a.title));
     put("written", json!(summary::written(a.written)));
     put("stack_sketch", json!(summary::sketch(a)));
-    put("temperature", json!(number(a.device.temperature.si(), "K", &[], false)));
-    put("current_density", json!(a.device.current_density.map(|j| number(j.si(), "A/m²", &[], false))));
-    put("voltages_told_at_current_density", json!(number(a.told_at.si(), "A/m²", &[], false)));
+    put(
+        "temperature",
+        json!(number(a.device.temperature.si(), "K", &[], false)),
+    );
+    put(
+        "current_density",
+        json!(
+            a.device
+                .current_density
+                .map(|j| number(j.si(), "A/m²", &[], false))
+        ),
+    );
+    put(
+        "voltages_told_at_current_density",
+        json!(number(a.told_at.si(), "A/m²", &[], false)),
+    );
     put("injected_polarization", json!(n(o.polarization.si(), "1")));
-    put("spin_accumulation_per_current_density", json!(n(o.accumulation.si(), AREA)));
+    put(
+        "spin_accumulation_per_current_density",
+        json!(n(o.accumulation.si(), AREA)),
+    );
     put(
         "spin_accumulation",
-        json!(a.device.current_density.map(|j| n(o.accumulation.si() * j.si(), "V"))),
+        json!(
+            a.device
+                .current_density
+                .map(|j| n(o.accumulation.si() * j.si(), "V"))
+        ),
     );
     put("resistance_area", json!(n(a.resistance_area[0].si(), AREA)));
     if a.device.has_two_states {
-        put("injected_polarization_antiparallel", json!(n(o.polarization_antiparallel.si(), "1")));
+        put(
+            "injected_polarization_antiparallel",
+            json!(n(o.polarization_antiparallel.si(), "1")),
+        );
         put(
             "spin_accumulation_per_current_density_antiparallel",
             json!(n(o.accumulation_antiparallel.si(), AREA)),
         );
         put("magnetoresistance", json!(n(o.magnetoresistance.si(), "1")));
-        put("resistance_area_change", json!(n(o.resistance_area_change.si(), AREA)));
-        put("resistance_area_antiparallel", json!(n(a.resistance_area[1].si(), AREA)));
+        put(
+            "resistance_area_change",
+            json!(n(o.resistance_area_change.si(), AREA)),
+        );
+        put(
+            "resistance_area_antiparallel",
+            json!(n(a.resistance_area[1].si(), AREA)),
+        );
     }
-    put("goals", Value::Array(a.goals.iter().map(|g| goal(a, g, &from, strained)).collect()));
+    put(
+        "goals",
+        Value::Array(
+            a.goals
+                .iter()
+                .map(|g| goal(a, g, &from, strained))
+                .collect(),
+        ),
+    );
     put("goals_met", json!(a.goals.iter().all(|g| g.met)));
     put(
         "default_window",
-        a.default_window.as_ref().map_or(Value::Null, |w| window(a, w, &from)),
+        a.default_window
+            .as_ref()
+            .map_or(Value::Null, |w| window(a, w, &from)),
     );
     put(
         "rule_of_thumb",
-        a.rule_of_thumb.map_or(Value::Null, |[low, high]| {
-            json!({ "low": n(low.si(), AREA), "high": n(high.si(), AREA) })
-        }),
+        a.rule_of_thumb.map_or(
+            Value::Null,
+            |[low, high]| json!({ "low": n(low.si(), AREA), "high": n(high.si(), AREA) }),
+        ),
     );
-    put("without_barrier", a.default_half_metal.map_or(Value::Null, |h| half_metal(h, &from)));
+    put(
+        "without_barrier",
+        a.default_half_metal
+            .map_or(Value::Null, |h| half_metal(h, &from)),
+    );
     put(
         "contact_windows",
         a.contact_windows
@@ -198,8 +245,11 @@ pub fn assessment(a: &Assessment) -> Value {
         a.checks
             .iter()
             .map(|c| {
-                let (key, unit) =
-                    if c.is_resistance_area { ("resistance_area", AREA) } else { ("polarization", "1") };
+                let (key, unit) = if c.is_resistance_area {
+                    ("resistance_area", AREA)
+                } else {
+                    ("polarization", "1")
+                };
                 json!({
                     "kind": c.kind.word(),
                     key: number(c.reading.si, unit, std::slice::from_ref(&c.record), false),
@@ -220,8 +270,13 @@ pub fn assessment(a: &Assessment) -> Value {
 }
 
 fn records(a: &Assessment) -> Vec<String> {
-    let mut ids: Vec<String> =
-        a.device.table.inputs().iter().flat_map(|i| i.provenance.records()).collect();
+    let mut ids: Vec<String> = a
+        .device
+        .table
+        .inputs()
+        .iter()
+        .flat_map(|i| i.provenance.records())
+        .collect();
     ids.sort();
     ids.dedup();
     ids
@@ -233,7 +288,9 @@ fn path_of(a: &Assessment, at: Position) -> Option<String> {
 
 /// Ids of the records behind the inputs of one layer or contact.
 fn under(a: &Assessment, at: Position) -> Vec<String> {
-    let Some(path) = path_of(a, at) else { return Vec::new() };
+    let Some(path) = path_of(a, at) else {
+        return Vec::new();
+    };
     let mut ids: Vec<String> = a
         .device
         .table
@@ -248,7 +305,12 @@ fn under(a: &Assessment, at: Position) -> Vec<String> {
 }
 
 fn gamma_records(a: &Assessment, w: &Window) -> Vec<String> {
-    match a.device.likely.iter().find(|l| l.element == w.contact && w.asymmetry_is_likely) {
+    match a
+        .device
+        .likely
+        .iter()
+        .find(|l| l.element == w.contact && w.asymmetry_is_likely)
+    {
         Some(likely) => likely.input.provenance.records(),
         None => under(a, Position::Element(w.contact)),
     }
@@ -294,7 +356,12 @@ fn window(a: &Assessment, w: &Result<Window, NoWindow>, from: &[String]) -> Valu
     match w {
         Ok(w) => {
             let mut from = from.to_vec();
-            from.extend(gamma_records(a, w).into_iter().filter(|id| !from.contains(id)).collect::<Vec<_>>());
+            from.extend(
+                gamma_records(a, w)
+                    .into_iter()
+                    .filter(|id| !from.contains(id))
+                    .collect::<Vec<_>>(),
+            );
             let from = from.as_slice();
             let edge = |e: Option<f64>| e.map(|x| number(x, AREA, from, false));
             let unit = si_unit(w.wish.target.kind().scale);
@@ -330,7 +397,9 @@ fn window(a: &Assessment, w: &Result<Window, NoWindow>, from: &[String]) -> Valu
 }
 
 fn mismatch(a: &Assessment, from: &[String], strained: bool) -> Value {
-    let Some(m) = &a.mismatch else { return Value::Null };
+    let Some(m) = &a.mismatch else {
+        return Value::Null;
+    };
     let n = |v: f64, unit: &'static str| number(v, unit, from, strained);
     let of = |v: f64, unit: &'static str, at: Option<Position>| {
         number(v, unit, &at.map_or(Vec::new(), |at| under(a, at)), strained)
@@ -466,7 +535,13 @@ fn spread(s: &Spread, unit: &'static str) -> Value {
 }
 
 fn inputs(a: &Assessment) -> Vec<Value> {
-    let table = a.device.table.inputs().iter().enumerate().map(|(i, input)| (Some(i), input));
+    let table = a
+        .device
+        .table
+        .inputs()
+        .iter()
+        .enumerate()
+        .map(|(i, input)| (Some(i), input));
     let likely = a.device.likely.iter().map(|l| (None, &l.input));
     table
         .chain(likely)
@@ -519,8 +594,13 @@ fn honesty(a: &Assessment) -> Value {
 pub fn varied(v: &Varied) -> Value {
     let unit = si_unit(v.variation.kind.scale);
     let units = super::varied::columns(v);
-    let mut from: Vec<String> =
-        v.device.table.inputs().iter().flat_map(|i| i.provenance.records()).collect();
+    let mut from: Vec<String> = v
+        .device
+        .table
+        .inputs()
+        .iter()
+        .flat_map(|i| i.provenance.records())
+        .collect();
     from.sort();
     from.dedup();
     let rows: Vec<Value> = v
@@ -530,9 +610,15 @@ pub fn varied(v: &Varied) -> Value {
         .map(|(row, text)| {
             let mut out = Map::new();
             out.insert("as_written".to_owned(), json!(text));
-            out.insert("value".to_owned(), json!(number(row.value, unit, &[], false)));
+            out.insert(
+                "value".to_owned(),
+                json!(number(row.value, unit, &[], false)),
+            );
             for c in &units {
-                out.insert(c.name.to_owned(), json!(number(row.outcome[c.index], si_unit(c.scale), &from, false)));
+                out.insert(
+                    c.name.to_owned(),
+                    json!(number(row.outcome[c.index], si_unit(c.scale), &from, false)),
+                );
             }
             if !v.goals.is_empty() {
                 out.insert("goals_met".to_owned(), json!(row.goals_met));

@@ -26,7 +26,11 @@ pub fn area(si: f64) -> String {
 /// Several resistance-area products that belong together, in one unit where they lie within five decades.
 #[must_use]
 pub fn areas(all: &[f64]) -> Vec<String> {
-    let sizes: Vec<f64> = all.iter().map(|x| x.abs()).filter(|x| *x > 0.0 && x.is_finite()).collect();
+    let sizes: Vec<f64> = all
+        .iter()
+        .map(|x| x.abs())
+        .filter(|x| *x > 0.0 && x.is_finite())
+        .collect();
     let low = sizes.iter().copied().fold(f64::INFINITY, f64::min);
     let high = sizes.iter().copied().fold(0.0, f64::max);
     if !(low.is_finite() && high / low < 1e5) {
@@ -34,14 +38,20 @@ pub fn areas(all: &[f64]) -> Vec<String> {
     }
     // The unit of the geometric middle keeps both ends readable.
     let (unit, factor) = trade_unit((low * high).sqrt(), Scale::ResistanceArea);
-    all.iter().map(|x| joined(&format!("{} {unit}", number_in(*x, factor, DIGITS)))).collect()
+    all.iter()
+        .map(|x| joined(&format!("{} {unit}", number_in(*x, factor, DIGITS))))
+        .collect()
 }
 
 /// A pure number such as β or γ with two digits behind the point.
 #[must_use]
 pub fn asymmetry(x: f64) -> String {
     let near = x.abs() > 0.995 && x.abs() < 1.0;
-    let text = if near { format!("{x:.5}") } else { format!("{x:.2}") };
+    let text = if near {
+        format!("{x:.5}")
+    } else {
+        format!("{x:.2}")
+    };
     text.replace('-', "\u{2212}")
 }
 
@@ -68,7 +78,11 @@ pub fn factor(x: f64) -> String {
     if (0.0..5.0).contains(&power) {
         let step = 10.0_f64.powf((power - f64::from(digits) + 1.0).max(-1.0));
         let rounded = (x / step).round() * step;
-        if rounded < 10.0 { format!("{rounded:.1}") } else { format!("{rounded:.0}") }
+        if rounded < 10.0 {
+            format!("{rounded:.1}")
+        } else {
+            format!("{rounded:.0}")
+        }
     } else {
         with_digits(x, Scale::Plain, 2)
     }
@@ -78,7 +92,10 @@ pub fn factor(x: f64) -> String {
 #[must_use]
 pub fn near_one(short_of_one: f64) -> String {
     if short_of_one < 1e-3 {
-        format!("1\u{a0}−\u{a0}{}", joined(&with_digits(short_of_one, Scale::Plain, 2)))
+        format!(
+            "1\u{a0}−\u{a0}{}",
+            joined(&with_digits(short_of_one, Scale::Plain, 2))
+        )
     } else {
         let digits = if short_of_one < 0.01 { 4 } else { 3 };
         format!("{:.digits$}", 1.0 - short_of_one)
@@ -141,5 +158,9 @@ pub fn window(low: Option<ResistanceAreaProduct>, high: Option<ResistanceAreaPro
 /// How far x is from an edge: `12 times`, `3 %`, `0.2 %`.
 #[must_use]
 pub fn times(ratio: f64) -> String {
-    if ratio < 1.1 { percent(ratio - 1.0) } else { format!("{} times", factor(ratio)) }
+    if ratio < 1.1 {
+        percent(ratio - 1.0)
+    } else {
+        format!("{} times", factor(ratio))
+    }
 }

@@ -21,7 +21,12 @@ pub fn list(all: &[Listed], width: usize) -> Vec<String> {
     let mut t = table(&["name", "class", "also", "what"], width, &[]);
     for l in all {
         let own = if l.from_user { " (yours)" } else { "" };
-        t.add_row(vec![l.id.clone(), format!("{}{own}", l.class), l.aliases.join(", "), l.name.clone()]);
+        t.add_row(vec![
+            l.id.clone(),
+            format!("{}{own}", l.class),
+            l.aliases.join(", "),
+            l.name.clone(),
+        ]);
     }
     keep_whole(&mut t, &[0, 1]);
     table_lines(&t)
@@ -29,7 +34,11 @@ pub fn list(all: &[Listed], width: usize) -> Vec<String> {
 
 fn reading(r: &Reading, scale: Scale) -> String {
     let text = with_spread(r.si, &r.spread, scale).replace(' ', "\u{a0}");
-    if matches!(r.spread, Spread::Unknown) { format!("{text}, spread not stated") } else { text }
+    if matches!(r.spread, Spread::Unknown) {
+        format!("{text}, spread not stated")
+    } else {
+        text
+    }
 }
 
 struct Sources<'a> {
@@ -99,9 +108,19 @@ fn at(c: &Common) -> String {
     }
     let conditions = &c.conditions;
     parts.extend(conditions.form.clone());
-    parts.extend(conditions.carrier_type.as_ref().map(|t| format!("{t}-type")));
+    parts.extend(
+        conditions
+            .carrier_type
+            .as_ref()
+            .map(|t| format!("{t}-type")),
+    );
     parts.extend(conditions.dopant.clone());
-    parts.extend(conditions.doping.as_ref().map(|d| with_digits(d.si, Scale::Density, 2)));
+    parts.extend(
+        conditions
+            .doping
+            .as_ref()
+            .map(|d| with_digits(d.si, Scale::Density, 2)),
+    );
     parts.extend(conditions.others.iter().map(|(k, v)| format!("{k}: {v}")));
     parts.join(", ")
 }
@@ -109,7 +128,11 @@ fn at(c: &Common) -> String {
 /// One record: what it says on one line, how it was obtained below it.
 fn entry(c: &Common, what: &str, how: &str, width: usize) -> Vec<String> {
     let at = at(c);
-    let at = if at.is_empty() { String::new() } else { format!(" at {at}") };
+    let at = if at.is_empty() {
+        String::new()
+    } else {
+        format!(" at {at}")
+    };
     let mut lines = marked(&c.id, &format!("{what}{at}"), width);
     lines.extend(marked("   ", how, width));
     lines
@@ -119,7 +142,10 @@ fn section(title: &str, lines: Vec<String>) -> Vec<String> {
     if lines.is_empty() {
         return lines;
     }
-    [String::new(), title.to_owned()].into_iter().chain(lines).collect()
+    [String::new(), title.to_owned()]
+        .into_iter()
+        .chain(lines)
+        .collect()
 }
 
 fn pairs(m: &[PairRecord], sources: &mut Sources<'_>, width: usize) -> Vec<String> {
@@ -131,7 +157,11 @@ fn pairs(m: &[PairRecord], sources: &mut Sources<'_>, width: usize) -> Vec<Strin
             reading(&p.bulk_asymmetry, Scale::Plain),
             reading(&p.spin_diffusion_length, Scale::Length)
         );
-        let assumed = if p.resistivity_assumed { "; ρ not from the same paper" } else { "" };
+        let assumed = if p.resistivity_assumed {
+            "; ρ not from the same paper"
+        } else {
+            ""
+        };
         let how = format!(
             "{}; {}{assumed}",
             p.common.technique.clone().unwrap_or_default(),
@@ -158,12 +188,24 @@ fn laws(m: &[LawRecord], sources: &mut Sources<'_>, width: usize) -> Vec<String>
         if lines.is_empty() {
             lines.extend([String::new(), "Laws".to_owned()]);
         }
-        let coefficients: Vec<String> = law.coefficients.iter().map(|(k, v)| format!("{k} = {v}")).collect();
+        let coefficients: Vec<String> = law
+            .coefficients
+            .iter()
+            .map(|(k, v)| format!("{k} = {v}"))
+            .collect();
         let range: Vec<String> = law.range.iter().map(|(k, v)| format!("{k} {v}")).collect();
-        let error = law.error.as_ref().map_or(String::new(), |e| format!("; stated error {e}"));
+        let error = law
+            .error
+            .as_ref()
+            .map_or(String::new(), |e| format!("; stated error {e}"));
         let text = format!(
             "{}, {}: {}; {}; range {}{error}; {}",
-            law.property.name, law.form, law.formula, coefficients.join(", "), range.join(", "), sources.how(&law.common)
+            law.property.name,
+            law.form,
+            law.formula,
+            coefficients.join(", "),
+            range.join(", "),
+            sources.how(&law.common)
         );
         lines.extend(marked(&law.common.id, &text, width));
     }
@@ -196,7 +238,11 @@ fn notes(m: &[NoteRecord], sources: &mut Sources<'_>, width: usize) -> Vec<Strin
         if lines.is_empty() {
             lines.extend([String::new(), "Notes".to_owned()]);
         }
-        lines.extend(marked(&format!("{}:", n.kind), &format!("{} ({})", n.text, sources.how(&n.common)), width));
+        lines.extend(marked(
+            &format!("{}:", n.kind),
+            &format!("{} ({})", n.text, sources.how(&n.common)),
+            width,
+        ));
     }
     if m.iter().any(|n| n.kind == "hazard") {
         lines.extend(wrap("These are reminders, not a safety assessment: local rules, the safety data sheet and licensed practice decide.", width));
@@ -207,9 +253,19 @@ fn notes(m: &[NoteRecord], sources: &mut Sources<'_>, width: usize) -> Vec<Strin
 /// A whole material.
 #[must_use]
 pub fn material(m: &Material, library: &Library, width: usize) -> Vec<String> {
-    let mut sources = Sources { library, keys: Vec::new() };
-    let also = if m.aliases.is_empty() { String::new() } else { format!(", also {}", m.aliases.join(", ")) };
-    let mut lines = wrap(&format!("{} ({}{also}): {}", m.id, m.class.word(), m.name), width);
+    let mut sources = Sources {
+        library,
+        keys: Vec::new(),
+    };
+    let also = if m.aliases.is_empty() {
+        String::new()
+    } else {
+        format!(", also {}", m.aliases.join(", "))
+    };
+    let mut lines = wrap(
+        &format!("{} ({}{also}): {}", m.id, m.class.word(), m.name),
+        width,
+    );
     lines.extend(pairs(&m.pairs, &mut sources, width));
     lines.extend(values(&m.values, &mut sources, width));
     lines.extend(calibration_lines(&m.calibrations, &mut sources, width));
@@ -227,7 +283,10 @@ fn calibration_lines(
     let mut lines = Vec::new();
     for c in all {
         if lines.is_empty() {
-            lines.extend([String::new(), "Calibrations of the resistance-area product".to_owned()]);
+            lines.extend([
+                String::new(),
+                "Calibrations of the resistance-area product".to_owned(),
+            ]);
         }
         let mut parts = vec![format!("between {}", c.electrodes.join(" and "))];
         if let (Some(ra), Some(t)) = (&c.resistance_area, &c.thickness) {
@@ -237,7 +296,11 @@ fn calibration_lines(
                 reading(t, Scale::Length)
             ));
         }
-        parts.extend(c.thickness_per_decade.as_ref().map(|s| format!("{} a decade", reading(s, Scale::Slope))));
+        parts.extend(
+            c.thickness_per_decade
+                .as_ref()
+                .map(|s| format!("{} a decade", reading(s, Scale::Slope))),
+        );
         parts.push(at(&c.common));
         parts.push(sources.how(&c.common));
         lines.extend(marked(&c.common.id, &parts.join("; "), width));
@@ -248,7 +311,10 @@ fn calibration_lines(
 /// A whole interface.
 #[must_use]
 pub fn interface(i: &InterfaceEntry, library: &Library, width: usize) -> Vec<String> {
-    let mut sources = Sources { library, keys: Vec::new() };
+    let mut sources = Sources {
+        library,
+        keys: Vec::new(),
+    };
     let mut lines = wrap(
         &format!(
             "{}: {}. Ferromagnet {}, barrier {}, channel {}.",
@@ -256,7 +322,9 @@ pub fn interface(i: &InterfaceEntry, library: &Library, width: usize) -> Vec<Str
             i.name,
             i.ferromagnet,
             i.barrier.as_deref().unwrap_or("none (direct contact)"),
-            i.channel.as_deref().unwrap_or("none (superconductor or second ferromagnet)")
+            i.channel
+                .as_deref()
+                .unwrap_or("none (superconductor or second ferromagnet)")
         ),
         width,
     );

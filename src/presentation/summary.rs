@@ -12,14 +12,13 @@ use crate::studies::window::{NoWindow, Window};
 
 use super::lines::{labelled, marked, wrap};
 use super::numbers::{
-    area, areas, asymmetry, comparison, factor, near_one, of_target, percent, result, temperature, tidy,
-    voltage, window,
+    area, areas, asymmetry, comparison, factor, near_one, of_target, percent, result, temperature,
+    tidy, voltage, window,
 };
 use super::wording::{finding, percent_share, position, severity_mark};
 
 /// Most lines of the short answer.
 pub const MOST_LINES: usize = 24;
-
 
 /// Most elements that the sketch of a stack names.
 const LONGEST_SKETCH: usize = 11;
@@ -30,12 +29,19 @@ pub fn sketch(a: &Assessment) -> String {
     let device = &a.device;
     let mut parts = Vec::new();
     for (i, name) in device.names.iter().enumerate() {
-        let label = if is_bare(device, i) { "bare".to_owned() } else { name.label.clone() };
+        let label = if is_bare(device, i) {
+            "bare".to_owned()
+        } else {
+            name.label.clone()
+        };
         parts.push(label);
     }
     if parts.len() > LONGEST_SKETCH {
         let left_out = parts.len() - LONGEST_SKETCH + 1;
-        parts.splice(LONGEST_SKETCH / 2..LONGEST_SKETCH / 2 + left_out, [format!("… {left_out} more …")]);
+        parts.splice(
+            LONGEST_SKETCH / 2..LONGEST_SKETCH / 2 + left_out,
+            [format!("… {left_out} more …")],
+        );
     }
     parts.join(" | ")
 }
@@ -50,20 +56,36 @@ fn is_bare(device: &Vertical, name: usize) -> bool {
 
 fn goal_text(g: &GoalResult) -> String {
     let verdict = if g.met { "met" } else { "not met" };
-    let state = if g.goal.state == GoalState::Antiparallel { ", antiparallel" } else { "" };
-    format!("goal\u{a0}{}{state}: {}", comparison(g.goal.target, &g.goal.comparison), verdict.replace(' ', "\u{a0}"))
+    let state = if g.goal.state == GoalState::Antiparallel {
+        ", antiparallel"
+    } else {
+        ""
+    };
+    format!(
+        "goal\u{a0}{}{state}: {}",
+        comparison(g.goal.target, &g.goal.comparison),
+        verdict.replace(' ', "\u{a0}")
+    )
 }
 
 fn with_goal(a: &Assessment, target: Target, value: String) -> String {
-    let goals: Vec<String> =
-        a.goals.iter().filter(|g| g.goal.target == target).map(goal_text).collect();
+    let goals: Vec<String> = a
+        .goals
+        .iter()
+        .filter(|g| g.goal.target == target)
+        .map(goal_text)
+        .collect();
     if goals.is_empty() {
         return value;
     }
     // Blanks that do not break keep the goals in one column.
     let blanks = 16_usize.saturating_sub(value.chars().count()).max(2);
     let short = value.chars().count() <= 16;
-    let gap = if short { "\u{a0}".repeat(blanks) } else { "; ".to_owned() };
+    let gap = if short {
+        "\u{a0}".repeat(blanks)
+    } else {
+        "; ".to_owned()
+    };
     format!("{value}{gap}{}", goals.join("; "))
 }
 
@@ -72,7 +94,11 @@ fn with_goal(a: &Assessment, target: Target, value: String) -> String {
 pub fn accumulation(a: &Assessment) -> String {
     let u = a.outcome.accumulation.si();
     let j = a.told_at.si();
-    let at = if a.device.current_density.is_some() { "at" } else { "per" };
+    let at = if a.device.current_density.is_some() {
+        "at"
+    } else {
+        "per"
+    };
     format!("{} {at} {}", voltage(u * j), current_density_text(j))
 }
 
@@ -102,7 +128,11 @@ pub fn why(a: &Assessment, m: &Mismatch) -> String {
     // The two contacts together make the injected polarization; a far share of almost nothing is not told.
     let p = a.outcome.polarization.si();
     let far = m.from_far_side.abs() > 5e-3 * p.abs();
-    let adds = if far { format!("; the far contact adds {}", percent(m.from_far_side)) } else { String::new() };
+    let adds = if far {
+        format!("; the far contact adds {}", percent(m.from_far_side))
+    } else {
+        String::new()
+    };
     let crossing = format!(
         "of the {} that the contact offers {} crosses{adds}",
         percent(m.offered),
@@ -135,10 +165,17 @@ fn asymmetry_text(a: &Assessment, w: &Window) -> String {
     if w.asymmetry_is_likely {
         let likely = a.device.likely.iter().find(|l| l.element == w.contact);
         let from = likely.map_or(String::new(), |l| {
-            let borrowed = l.input.provenance.marks.iter().any(|m| {
-                matches!(m, crate::materials::choose::Mark::Borrowed { .. })
-            });
-            format!(", {} {}", if borrowed { "borrowed from" } else { "that of" }, l.interface)
+            let borrowed = l
+                .input
+                .provenance
+                .marks
+                .iter()
+                .any(|m| matches!(m, crate::materials::choose::Mark::Borrowed { .. }));
+            format!(
+                ", {} {}",
+                if borrowed { "borrowed from" } else { "that of" },
+                l.interface
+            )
         });
         format!("with γ\u{a0}=\u{a0}{}{from}", asymmetry(gamma))
     } else {
@@ -151,12 +188,21 @@ fn together(a: &Assessment, w: &Window) -> String {
     if w.contacts.len() < 2 {
         let bare = w.here.si() > 0.0
             && a.device.channel_contacts.iter().any(|i| {
-                *i != w.contact && a.blueprint.interface(*i).is_some_and(|x| x.spin_resistance.si() <= 0.0)
+                *i != w.contact
+                    && a.blueprint
+                        .interface(*i)
+                        .is_some_and(|x| x.spin_resistance.si() <= 0.0)
             });
-        return if bare { "; the bare contact stays bare".to_owned() } else { String::new() };
+        return if bare {
+            "; the bare contact stays bare".to_owned()
+        } else {
+            String::new()
+        };
     }
     let product = |i: &usize| {
-        a.blueprint.interface(*i).map_or(0.0, |x| x.spin_resistance.resistance_area(x.asymmetry).si())
+        a.blueprint
+            .interface(*i)
+            .map_or(0.0, |x| x.spin_resistance.resistance_area(x.asymmetry).si())
     };
     let products: Vec<f64> = w.contacts.iter().map(product).collect();
     let (low, high) = (
@@ -175,7 +221,11 @@ fn together(a: &Assessment, w: &Window) -> String {
         String::new()
     };
     let unlike = low > 0.0 && high / low > 1.01;
-    let ratio = if unlike { format!(", their ratio {} kept", factor(high / low)) } else { String::new() };
+    let ratio = if unlike {
+        format!(", their ratio {} kept", factor(high / low))
+    } else {
+        String::new()
+    };
     format!("; both contacts{named} scaled together{ratio}")
 }
 
@@ -233,19 +283,35 @@ pub fn window_text(a: &Assessment, found: &Result<Window, NoWindow>) -> String {
 pub fn rule_of_thumb(a: &Assessment) -> Option<String> {
     let [low, high] = a.rule_of_thumb?;
     let both = areas(&[low.si(), high.si()]).join(" .. ");
-    Some(format!("{both} from (1−γ²)\u{a0}r_N\u{a0}t/λ .. (1−γ²)\u{a0}r_N\u{a0}λ/t"))
+    Some(format!(
+        "{both} from (1−γ²)\u{a0}r_N\u{a0}t/λ .. (1−γ²)\u{a0}r_N\u{a0}λ/t"
+    ))
 }
 
 /// What bulk polarization would be needed without a barrier.
 #[must_use]
 pub fn half_metal_text(a: &Assessment, found: HalfMetal) -> Option<String> {
     let several = a.device.channel_contacts.len() > 1;
-    let semiconductor = a.device.name(a.device.channel).is_some_and(|n| n.semiconductor);
-    let hypothetical = if semiconductor { " (hypothetical: a depletion region forms)" } else { "" };
-    let of = if several { "β of both would" } else { "β would" };
+    let semiconductor = a
+        .device
+        .name(a.device.channel)
+        .is_some_and(|n| n.semiconductor);
+    let hypothetical = if semiconductor {
+        " (hypothetical: a depletion region forms)"
+    } else {
+        ""
+    };
+    let of = if several {
+        "β of both would"
+    } else {
+        "β would"
+    };
     Some(match found {
         HalfMetal::Needed { short_of_one } => {
-            format!("{of} have to reach {}{hypothetical}", near_one(short_of_one))
+            format!(
+                "{of} have to reach {}{hypothetical}",
+                near_one(short_of_one)
+            )
         }
         HalfMetal::Suffices => format!("β as it is suffices{hypothetical}"),
         HalfMetal::OutOfReach => format!("no β below 1\u{a0}−\u{a0}10⁻¹² would do{hypothetical}"),
@@ -284,7 +350,9 @@ pub fn honesty(a: &Assessment) -> String {
         (1, 0) => "one carries most of the result and is neither recalled nor assumed".to_owned(),
         (1, _) => "one of the recalled or assumed carries most of the result".to_owned(),
         (n, 0) => format!("{n} carry most of its spread, none of them recalled or assumed"),
-        (n, d) if d == n => format!("{n} carry most of the result, all of them recalled or assumed"),
+        (n, d) if d == n => {
+            format!("{n} carry most of the result, all of them recalled or assumed")
+        }
         (n, d) => format!("{n} carry most of the result, {d} of them recalled or assumed"),
     };
     format!("{counts}; {carry}")
@@ -316,7 +384,10 @@ pub fn summary_rows(a: &Assessment, width: usize) -> Vec<String> {
     let mut head = Vec::new();
     if let Some(title) = &a.title {
         // Control characters of a title are not passed on to the terminal.
-        let title: String = title.chars().map(|c| if c.is_control() { ' ' } else { c }).collect();
+        let title: String = title
+            .chars()
+            .map(|c| if c.is_control() { ' ' } else { c })
+            .collect();
         head.extend(wrap(&title, width).into_iter().take(1));
     }
     head.extend(wrap(
@@ -327,16 +398,27 @@ pub fn summary_rows(a: &Assessment, width: usize) -> Vec<String> {
     let mut row = |label: &str, value: String| body.extend(labelled(label, &value, width));
     let p = a.outcome.polarization.si();
     let polarization = if a.device.has_two_states {
-        format!("{} (antiparallel {})", percent(p), percent(a.outcome.polarization_antiparallel.si()))
+        format!(
+            "{} (antiparallel {})",
+            percent(p),
+            percent(a.outcome.polarization_antiparallel.si())
+        )
     } else {
         percent(p)
     };
-    row("injected current polarization", with_goal(a, Target::InjectedPolarization, polarization));
+    row(
+        "injected current polarization",
+        with_goal(a, Target::InjectedPolarization, polarization),
+    );
     row("spin accumulation", accumulation(a));
     if a.device.has_two_states {
         row(
             "magnetoresistance",
-            with_goal(a, Target::Magnetoresistance, percent(a.outcome.magnetoresistance.si())),
+            with_goal(
+                a,
+                Target::Magnetoresistance,
+                percent(a.outcome.magnetoresistance.si()),
+            ),
         );
         let all = [
             a.outcome.resistance_area_change.si(),
@@ -344,8 +426,14 @@ pub fn summary_rows(a: &Assessment, width: usize) -> Vec<String> {
             a.resistance_area[1].si(),
         ];
         let printed = areas(&all);
-        let change = format!("{} on RA {} (antiparallel {})", printed[0], printed[1], printed[2]);
-        row("resistance-area change", with_goal(a, Target::ResistanceAreaChange, change));
+        let change = format!(
+            "{} on RA {} (antiparallel {})",
+            printed[0], printed[1], printed[2]
+        );
+        row(
+            "resistance-area change",
+            with_goal(a, Target::ResistanceAreaChange, change),
+        );
     }
     if let Some(m) = &a.mismatch {
         row("why", why(a, m));
@@ -354,11 +442,23 @@ pub fn summary_rows(a: &Assessment, width: usize) -> Vec<String> {
         row("RA that meets the goal", window_text(a, &only.window));
     } else {
         for g in &a.goals {
-            let goal = format!("RA for {} {}", short_name(g.goal.target), comparison(g.goal.target, &g.goal.comparison));
+            let goal = format!(
+                "RA for {} {}",
+                short_name(g.goal.target),
+                comparison(g.goal.target, &g.goal.comparison)
+            );
             row(&goal.replace('\u{a0}', " "), short_window(&g.window));
         }
         if let Some(Ok(w)) = a.goals.first().map(|g| &g.window) {
-            row("", format!("({}{}); {}", asymmetry_text(a, w), together(a, w), here_text(w)));
+            row(
+                "",
+                format!(
+                    "({}{}); {}",
+                    asymmetry_text(a, w),
+                    together(a, w),
+                    here_text(w)
+                ),
+            );
         }
     }
     if let Some(w) = &a.default_window {
@@ -368,20 +468,35 @@ pub fn summary_rows(a: &Assessment, width: usize) -> Vec<String> {
     if let Some(text) = rule_of_thumb(a) {
         row("rule of thumb", text);
     }
-    let found = a.goals.first().map(|g| g.half_metal).or(a.default_half_metal);
+    let found = a
+        .goals
+        .first()
+        .map(|g| g.half_metal)
+        .or(a.default_half_metal);
     if let Some(text) = found.and_then(|found| half_metal_text(a, found)) {
-        let label = if has_barrier(a) { "without a barrier" } else { "without that resistance" };
+        let label = if has_barrier(a) {
+            "without a barrier"
+        } else {
+            "without that resistance"
+        };
         row(label, text);
     }
-    head.into_iter().chain(body).chain(inputs_row(a, width)).collect()
+    head.into_iter()
+        .chain(body)
+        .chain(inputs_row(a, width))
+        .collect()
 }
 
 /// Whether what stands at the channel is a tunnel barrier or nothing yet, rather than a direct interface
 /// between metals.
 fn has_barrier(a: &Assessment) -> bool {
     let direct = |i: &usize| {
-        a.device.name(Position::Element(*i)).is_some_and(|n| n.path.ends_with("interface"))
-            && a.blueprint.interface(*i).is_some_and(|x| x.spin_resistance.si() > 0.0)
+        a.device
+            .name(Position::Element(*i))
+            .is_some_and(|n| n.path.ends_with("interface"))
+            && a.blueprint
+                .interface(*i)
+                .is_some_and(|x| x.spin_resistance.si() > 0.0)
     };
     !a.device.channel_contacts.iter().any(direct)
 }
@@ -437,7 +552,10 @@ pub fn written(w: Written) -> &'static str {
 /// The share of an input, for tables.
 #[must_use]
 pub fn share(a: &Assessment, column: usize) -> String {
-    a.shares.iter().find(|s| s.columns.contains(&column)).map_or("–".to_owned(), |s| percent_share(s.share))
+    a.shares
+        .iter()
+        .find(|s| s.columns.contains(&column))
+        .map_or("–".to_owned(), |s| percent_share(s.share))
 }
 
 /// Name of a position, for tables.

@@ -56,7 +56,13 @@ pub fn columns(v: &Varied) -> Vec<Column> {
 pub fn lines(v: &Varied, width: usize) -> Vec<String> {
     let columns = columns(v);
     let typed_unit = common_unit(&v.variation.points);
-    let key = v.variation.path.rsplit('.').next().unwrap_or("").replace('_', " ");
+    let key = v
+        .variation
+        .path
+        .rsplit('.')
+        .next()
+        .unwrap_or("")
+        .replace('_', " ");
     let mut head = vec![format!("{}\n{typed_unit}", key.replace(' ', "\n"))];
     let mut units = Vec::new();
     for c in &columns {
@@ -77,12 +83,20 @@ pub fn lines(v: &Varied, width: usize) -> Vec<String> {
         let number = text.strip_suffix(&typed_unit).unwrap_or(text).trim();
         let mut cells = vec![number.to_owned()];
         cells.extend(
-            columns.iter().zip(&units).map(|(c, f)| number_in(row.outcome[c.index], *f, DIGITS)),
+            columns
+                .iter()
+                .zip(&units)
+                .map(|(c, f)| number_in(row.outcome[c.index], *f, DIGITS)),
         );
         if !v.goals.is_empty() {
             cells.push(if row.goals_met { "met" } else { "not met" }.to_owned());
         }
-        t.add_row(cells.iter().map(|c| c.replace(' ', "\u{a0}")).collect::<Vec<_>>());
+        t.add_row(
+            cells
+                .iter()
+                .map(|c| c.replace(' ', "\u{a0}"))
+                .collect::<Vec<_>>(),
+        );
     }
     let mut lines = vec![format!("along {}", v.variation.path)];
     lines.extend(table_lines(&t));
@@ -118,7 +132,10 @@ pub fn csv(v: &Varied) -> Result<String, String> {
     let columns = columns(v);
     let mut writer = csv::Writer::from_writer(Vec::new());
     let head = |name: &str, scale: Scale| format!("{name} ({})", si_unit(scale));
-    let mut heads = vec!["as_written".to_owned(), head(&v.variation.path, v.variation.kind.scale)];
+    let mut heads = vec![
+        "as_written".to_owned(),
+        head(&v.variation.path, v.variation.kind.scale),
+    ];
     heads.extend(columns.iter().map(|c| head(c.name, c.scale)));
     if !v.goals.is_empty() {
         heads.push("goals_met".to_owned());

@@ -11,7 +11,6 @@ use super::numbers::{
     area, asymmetry, factor, of_target, percent, result, temperature, times, voltage, window,
 };
 
-
 /// The mark in front of a finding.
 #[must_use]
 pub fn severity_mark(severity: Severity) -> &'static str {
@@ -36,31 +35,67 @@ pub fn severity_word(severity: Severity) -> &'static str {
 #[must_use]
 pub fn rule_text(name: &str) -> &'static str {
     match name {
-        "conductivity-mismatch" => "the channel takes up spin so much more easily than the contact offers it that almost nothing crosses (channel's spin impedance above 10 times the contact's)",
+        "conductivity-mismatch" => {
+            "the channel takes up spin so much more easily than the contact offers it that almost nothing crosses (channel's spin impedance above 10 times the contact's)"
+        }
         "goal-out-of-reach" => "no resistance-area product meets the goal with this γ",
         "outside-window" => "the design's resistance-area product lies outside the window",
-        "window-unknown" => "no window can be told because γ of a barrier is not known for this pair",
-        "bare-semiconductor" => "a ferromagnet lies directly on a semiconductor: a depletion region forms, which the ohmic model leaves out",
+        "window-unknown" => {
+            "no window can be told because γ of a barrier is not known for this pair"
+        }
+        "bare-semiconductor" => {
+            "a ferromagnet lies directly on a semiconductor: a depletion region forms, which the ohmic model leaves out"
+        }
         "above-curie-temperature" => "a ferromagnet is used above its Curie temperature",
-        "near-curie-temperature" => "a ferromagnet is used above 0.7 of its Curie temperature, where asymmetries fall steeply (common practice)",
+        "near-curie-temperature" => {
+            "a ferromagnet is used above 0.7 of its Curie temperature, where asymmetries fall steeply (common practice)"
+        }
         "only-a-bound" => "an input is known only as a bound; the bound itself is used",
-        "high-bias" => "more than half a volt drops over an interface: the asymmetry of small bias no longer holds (common practice)",
-        "thin-channel" => "a channel taken as semi-infinite is thinner than three spin diffusion lengths",
-        "other-dopant" => "records of another dopant are used, or the dopant is not known to the library",
-        "measured-otherwise" => "a published value of the same contact differs from the design or its answer by more than ten times",
-        "borrowed-asymmetry" => "γ stands in from the tunnel polarization of the same ferromagnet and barrier on another electrode",
-        "long-channel" => "the channel between two contacts is longer than its spin diffusion length",
-        "thin-ferromagnet" => "a ferromagnet taken as thick is thinner than three spin diffusion lengths and its outer end is not stated",
+        "high-bias" => {
+            "more than half a volt drops over an interface: the asymmetry of small bias no longer holds (common practice)"
+        }
+        "thin-channel" => {
+            "a channel taken as semi-infinite is thinner than three spin diffusion lengths"
+        }
+        "other-dopant" => {
+            "records of another dopant are used, or the dopant is not known to the library"
+        }
+        "measured-otherwise" => {
+            "a published value of the same contact differs from the design or its answer by more than ten times"
+        }
+        "borrowed-asymmetry" => {
+            "γ stands in from the tunnel polarization of the same ferromagnet and barrier on another electrode"
+        }
+        "long-channel" => {
+            "the channel between two contacts is longer than its spin diffusion length"
+        }
+        "thin-ferromagnet" => {
+            "a ferromagnet taken as thick is thinner than three spin diffusion lengths and its outer end is not stated"
+        }
         "thin-barrier" => "a barrier is thinner than two monolayers: pinholes are likely",
         "temperature-outside-data" => "records of a temperature more than 10 % away are used",
         "doping-outside-data" => "records of a doping more than a factor 2 away are used",
-        "memory-loss-outside-temperature" => "a spin-memory loss measured at another temperature is used",
-        "asymmetry-near-one" => "β or γ is within its own uncertainty of ±1 or nearer to it than 0.01, where 1/(1 − β²) diverges",
-        "uncertain-inputs-matter" => "recalled or assumed inputs carry a tenth or more of the answer's spread",
-        "interface-left-out" => "an interface between two materials of the library has no record and is taken without resistance",
-        "not-linear" => "the spin accumulation of a channel that is not metallic exceeds kT/e: the linear model strains",
-        "drift" => "the electric field times λ exceeds kT/e in a channel that is not metallic: drift changes its spin diffusion length",
-        "strip-resistance-left-out" => "an end is fed in its plane: the strip's own series resistance is not counted",
+        "memory-loss-outside-temperature" => {
+            "a spin-memory loss measured at another temperature is used"
+        }
+        "asymmetry-near-one" => {
+            "β or γ is within its own uncertainty of ±1 or nearer to it than 0.01, where 1/(1 − β²) diverges"
+        }
+        "uncertain-inputs-matter" => {
+            "recalled or assumed inputs carry a tenth or more of the answer's spread"
+        }
+        "interface-left-out" => {
+            "an interface between two materials of the library has no record and is taken without resistance"
+        }
+        "not-linear" => {
+            "the spin accumulation of a channel that is not metallic exceeds kT/e: the linear model strains"
+        }
+        "drift" => {
+            "the electric field times λ exceeds kT/e in a channel that is not metallic: drift changes its spin diffusion length"
+        }
+        "strip-resistance-left-out" => {
+            "an end is fed in its plane: the strip's own series resistance is not counted"
+        }
         "record-replaced" => "records of your own folder have taken the place of shipped ones",
         _ => "",
     }
@@ -216,7 +251,11 @@ fn grouped<'a>(all: impl Iterator<Item = &'a str>) -> String {
             _ => groups.push((part.to_owned(), vec![key])),
         }
     }
-    groups.iter().map(|(p, k)| format!("{p}: {}", k.join(", "))).collect::<Vec<_>>().join("; ")
+    groups
+        .iter()
+        .map(|(p, k)| format!("{p}: {}", k.join(", ")))
+        .collect::<Vec<_>>()
+        .join("; ")
 }
 
 /// Name of a target in a sentence.
@@ -245,8 +284,20 @@ pub fn position(w: &crate::studies::window::Window) -> String {
     if w.intervals.iter().any(|i| i.holds(w.here)) {
         return ", inside".to_owned();
     }
-    let below = w.intervals.iter().filter_map(|i| i.low).map(|l| l.si()).filter(|l| *l > here).fold(f64::INFINITY, f64::min);
-    let above = w.intervals.iter().filter_map(|i| i.high).map(|h| h.si()).filter(|h| *h < here).fold(0.0, f64::max);
+    let below = w
+        .intervals
+        .iter()
+        .filter_map(|i| i.low)
+        .map(|l| l.si())
+        .filter(|l| *l > here)
+        .fold(f64::INFINITY, f64::min);
+    let above = w
+        .intervals
+        .iter()
+        .filter_map(|i| i.high)
+        .map(|h| h.si())
+        .filter(|h| *h < here)
+        .fold(0.0, f64::max);
     if here <= 0.0 {
         String::new()
     } else if below.is_finite() && (above <= 0.0 || below / here < here / above) {
@@ -267,7 +318,11 @@ pub fn mark(m: &Mark) -> String {
         Mark::Estimated => "our estimate".to_owned(),
         Mark::CommonPractice => "common practice".to_owned(),
         Mark::OtherTemperature { record, wanted } => {
-            format!("{} value used at {}", temperature(*record), temperature(*wanted))
+            format!(
+                "{} value used at {}",
+                temperature(*record),
+                temperature(*wanted)
+            )
         }
         Mark::TemperatureNotStated => "its temperature is not stated beside it".to_owned(),
         Mark::OtherDoping { record, .. } => {
@@ -278,7 +333,10 @@ pub fn mark(m: &Mark) -> String {
         Mark::NoSpread => "no spread known".to_owned(),
         Mark::BoundOnly => "only a bound".to_owned(),
         Mark::Borrowed { polarization } => {
-            format!("borrowed from a tunnel polarization of {}", asymmetry(*polarization))
+            format!(
+                "borrowed from a tunnel polarization of {}",
+                asymmetry(*polarization)
+            )
         }
         Mark::LengthScaled => "λ follows the stated resistivity, ρλ of the pair held".to_owned(),
         Mark::LengthNotScaled => "λ not scaled with the stated resistivity".to_owned(),

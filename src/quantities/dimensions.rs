@@ -37,8 +37,15 @@ impl Dimension {
     /// SI base units spelled out, for example `kg m⁴ s⁻³ A⁻²`; `1` for a pure number.
     #[must_use]
     pub fn spelled(self) -> String {
-        const ORDER: [(usize, &str); 7] =
-            [(1, "kg"), (0, "m"), (2, "s"), (3, "A"), (4, "K"), (5, "mol"), (6, "cd")];
+        const ORDER: [(usize, &str); 7] = [
+            (1, "kg"),
+            (0, "m"),
+            (2, "s"),
+            (3, "A"),
+            (4, "K"),
+            (5, "mol"),
+            (6, "cd"),
+        ];
         let parts: Vec<String> = ORDER
             .iter()
             .filter(|(i, _)| self.0[*i] != 0)
@@ -47,7 +54,11 @@ impl Dimension {
                 n => format!("{symbol}{}", superscript(n)),
             })
             .collect();
-        if parts.is_empty() { "1".to_owned() } else { parts.join(" ") }
+        if parts.is_empty() {
+            "1".to_owned()
+        } else {
+            parts.join(" ")
+        }
     }
 }
 
@@ -77,8 +88,7 @@ pub trait Measured: Copy {
     fn si(self) -> f64;
 }
 
-impl<L, M, T, I, Th, N, J, K> Measured
-    for Quantity<ISQ<L, M, T, I, Th, N, J, K>, SI<f64>, f64>
+impl<L, M, T, I, Th, N, J, K> Measured for Quantity<ISQ<L, M, T, I, Th, N, J, K>, SI<f64>, f64>
 where
     L: Integer,
     M: Integer,
@@ -89,11 +99,14 @@ where
     J: Integer,
     K: ?Sized,
 {
-    const DIMENSION: Dimension =
-        Dimension([L::I8, M::I8, T::I8, I::I8, Th::I8, N::I8, J::I8]);
+    const DIMENSION: Dimension = Dimension([L::I8, M::I8, T::I8, I::I8, Th::I8, N::I8, J::I8]);
 
     fn from_si(value: f64) -> Self {
-        Self { dimension: PhantomData, units: PhantomData, value }
+        Self {
+            dimension: PhantomData,
+            units: PhantomData,
+            value,
+        }
     }
 
     fn si(self) -> f64 {

@@ -4,13 +4,13 @@
 //! the unit the trade prints it in, and which special spellings (per cent, °C, oersted, monolayers) make
 //! sense there. Every error about a value is worded from the kind, so that a limit is stated in one place.
 
-use super::dimensions::{Dimension, Measured};
 use super::dimensions::{
     DiffusionCoefficient, ElectricCurrentDensity, ElectricPotential, ElectricalConductivity,
     ElectricalMobility, ElectricalResistance, ElectricalResistivity, Energy, Length,
     MagneticFluxDensity, Ratio, ResistanceTimesArea, ThermodynamicTemperature, Time,
     VolumetricNumberDensity,
 };
+use super::dimensions::{Dimension, Measured};
 
 /// How a quantity is printed: the trade's units and the steps between them.
 #[derive(Clone, Copy, PartialEq, Eq, Debug)]
@@ -71,7 +71,7 @@ pub struct Range {
     pub low: End,
     /// Upper limit.
     pub high: End,
-    /// Why a value outside is refused; completes the sentence "it must be ...: <reason>".
+    /// Why a value outside is refused; completes the sentence "… is out of range for the …: …".
     pub reason: &'static str,
 }
 
@@ -156,7 +156,11 @@ pub const CONDUCTIVITY: Kind = kind(
     "conductivity",
     <ElectricalConductivity as Measured>::DIMENSION,
     &["480 S/cm", "4.8e4 S/m"],
-    span(Excluding(0.0), Including(1e12), "a conductivity is positive"),
+    span(
+        Excluding(0.0),
+        Including(1e12),
+        "a conductivity is positive",
+    ),
     Scale::Conductivity,
 );
 /// Spin diffusion length.
@@ -164,7 +168,11 @@ pub const SPIN_DIFFUSION_LENGTH: Kind = kind(
     "spin diffusion length",
     <Length as Measured>::DIMENSION,
     &["8.5 nm", "2 µm"],
-    span(Excluding(0.0), Including(0.1), "it is a positive length, at most 10 cm"),
+    span(
+        Excluding(0.0),
+        Including(0.1),
+        "it is a positive length, at most 10 cm",
+    ),
     Scale::Length,
 );
 /// Thickness of a layer.
@@ -172,7 +180,11 @@ pub const THICKNESS: Kind = kind(
     "thickness",
     <Length as Measured>::DIMENSION,
     &["80 nm", "1.4 nm"],
-    span(Excluding(0.0), Including(0.1), "a layer's thickness is positive, at most 10 cm"),
+    span(
+        Excluding(0.0),
+        Including(0.1),
+        "a layer's thickness is positive, at most 10 cm",
+    ),
     Scale::Length,
 );
 /// Thickness of a tunnel barrier.
@@ -180,7 +192,11 @@ pub const BARRIER_THICKNESS: Kind = kind(
     "barrier thickness",
     <Length as Measured>::DIMENSION,
     &["1.4 nm", "6 ML"],
-    span(Excluding(0.0), Including(1e-7), "a tunnel barrier is a few nanometres thick; 100 nm is beyond any"),
+    span(
+        Excluding(0.0),
+        Including(1e-7),
+        "a tunnel barrier is a few nanometres thick; 100 nm is beyond any",
+    ),
     Scale::Length,
 );
 /// Resistance-area product, both spin channels in parallel.
@@ -188,7 +204,11 @@ pub const RESISTANCE_AREA: Kind = kind(
     "resistance-area product",
     <ResistanceTimesArea as Measured>::DIMENSION,
     &["12 kΩ µm²", "8 Ω µm²"],
-    span(Including(0.0), Including(1e6), "a resistance-area product is not negative"),
+    span(
+        Including(0.0),
+        Including(1e6),
+        "a resistance-area product is not negative",
+    ),
     Scale::ResistanceArea,
 );
 /// Interface spin resistance r_b*, in print AR*.
@@ -196,7 +216,11 @@ pub const INTERFACE_SPIN_RESISTANCE: Kind = kind(
     "interface spin resistance",
     <ResistanceTimesArea as Measured>::DIMENSION,
     &["0.51 fΩ m²", "5e-16 Ω m²"],
-    span(Including(0.0), Including(1e6), "an interface spin resistance is not negative"),
+    span(
+        Including(0.0),
+        Including(1e6),
+        "an interface spin resistance is not negative",
+    ),
     Scale::ResistanceArea,
 );
 /// Areal spin resistance r_F or r_N.
@@ -204,7 +228,11 @@ pub const SPIN_RESISTANCE: Kind = kind(
     "spin resistance",
     <ResistanceTimesArea as Measured>::DIMENSION,
     &["4.5e-15 Ω m²"],
-    span(Excluding(0.0), Including(1e6), "a spin resistance is positive"),
+    span(
+        Excluding(0.0),
+        Including(1e6),
+        "a spin resistance is positive",
+    ),
     Scale::ResistanceArea,
 );
 /// Product of resistivity and spin diffusion length of a metal.
@@ -225,38 +253,75 @@ const ASYMMETRY: Range = span(
 /// Bulk asymmetry β of a ferromagnet.
 pub const BULK_ASYMMETRY: Kind = Kind {
     percent: true,
-    ..kind("bulk asymmetry", Dimension::NONE, &["0.46", "46 %"], ASYMMETRY, Scale::Plain)
+    ..kind(
+        "bulk asymmetry",
+        Dimension::NONE,
+        &["0.46", "46 %"],
+        ASYMMETRY,
+        Scale::Plain,
+    )
 };
 /// Interface asymmetry γ.
 pub const INTERFACE_ASYMMETRY: Kind = Kind {
     percent: true,
-    ..kind("interface asymmetry", Dimension::NONE, &["0.4", "40 %"], ASYMMETRY, Scale::Plain)
+    ..kind(
+        "interface asymmetry",
+        Dimension::NONE,
+        &["0.4", "40 %"],
+        ASYMMETRY,
+        Scale::Plain,
+    )
 };
 
-const POLARIZATION: Range =
-    span(Including(-1.0), Including(1.0), "a polarization lies between −100 % and 100 %");
+const POLARIZATION: Range = span(
+    Including(-1.0),
+    Including(1.0),
+    "a polarization lies between −100 % and 100 %",
+);
 
 /// A polarization of any kind that is not an asymmetry of the model.
 pub const SPIN_POLARIZATION: Kind = Kind {
     percent: true,
-    ..kind("spin polarization", Dimension::NONE, &["45 %", "0.45"], POLARIZATION, Scale::Percent)
+    ..kind(
+        "spin polarization",
+        Dimension::NONE,
+        &["45 %", "0.45"],
+        POLARIZATION,
+        Scale::Percent,
+    )
 };
 /// Current spin polarization p = J/j.
 pub const CURRENT_SPIN_POLARIZATION: Kind = Kind {
     percent: true,
-    ..kind("current spin polarization", Dimension::NONE, &["10 %", "0.1"], POLARIZATION, Scale::Percent)
+    ..kind(
+        "current spin polarization",
+        Dimension::NONE,
+        &["10 %", "0.1"],
+        POLARIZATION,
+        Scale::Percent,
+    )
 };
 /// Spin polarization of the carrier density.
 pub const DENSITY_SPIN_POLARIZATION: Kind = Kind {
     percent: true,
-    ..kind("density spin polarization", Dimension::NONE, &["4.6 %"], POLARIZATION, Scale::Percent)
+    ..kind(
+        "density spin polarization",
+        Dimension::NONE,
+        &["4.6 %"],
+        POLARIZATION,
+        Scale::Percent,
+    )
 };
 /// Spin-memory-loss parameter δ of an interface.
 pub const SPIN_MEMORY_LOSS: Kind = kind(
     "spin-memory loss",
     Dimension::NONE,
     &["0.25"],
-    span(Including(0.0), Including(20.0), "δ is not negative; beyond 20 nothing is left of the spin"),
+    span(
+        Including(0.0),
+        Including(20.0),
+        "δ is not negative; beyond 20 nothing is left of the spin",
+    ),
     Scale::Plain,
 );
 /// Two-terminal magnetoresistance.
@@ -266,7 +331,11 @@ pub const MAGNETORESISTANCE: Kind = Kind {
         "magnetoresistance",
         Dimension::NONE,
         &["1 %"],
-        span(Including(-1.0), Including(1e6), "it is a ratio of resistances, above −100 %"),
+        span(
+            Including(-1.0),
+            Including(1e6),
+            "it is a ratio of resistances, above −100 %",
+        ),
         Scale::Percent,
     )
 };
@@ -275,7 +344,11 @@ pub const RESISTANCE_AREA_CHANGE: Kind = kind(
     "resistance-area change",
     <ResistanceTimesArea as Measured>::DIMENSION,
     &["1 Ω µm²", "2 fΩ m²"],
-    span(Including(-1e6), Including(1e6), "it is a difference of resistance-area products"),
+    span(
+        Including(-1e6),
+        Including(1e6),
+        "it is a difference of resistance-area products",
+    ),
     Scale::ResistanceArea,
 );
 /// Absolute temperature.
@@ -285,7 +358,11 @@ pub const TEMPERATURE: Kind = Kind {
         "temperature",
         <ThermodynamicTemperature as Measured>::DIMENSION,
         &["300 K", "25 °C"],
-        span(Including(1e-3), Including(2000.0), "the models hold between a millikelvin and 2000 K"),
+        span(
+            Including(1e-3),
+            Including(2000.0),
+            "the models hold between a millikelvin and 2000 K",
+        ),
         Scale::Temperature,
     )
 };
@@ -294,7 +371,11 @@ pub const DOPING: Kind = kind(
     "doping",
     <VolumetricNumberDensity as Measured>::DIMENSION,
     &["1e19 /cm³", "5e16 cm⁻³"],
-    span(Excluding(0.0), Including(1e30), "a density is positive, and 10²⁴ cm⁻³ is more than any solid holds"),
+    span(
+        Excluding(0.0),
+        Including(1e30),
+        "a density is positive, and 10²⁴ cm⁻³ is more than any solid holds",
+    ),
     Scale::Density,
 );
 /// Charge current density.
@@ -302,7 +383,11 @@ pub const CURRENT_DENSITY: Kind = kind(
     "current density",
     <ElectricCurrentDensity as Measured>::DIMENSION,
     &["1e5 A/cm²", "10 µA/µm²"],
-    span(Excluding(0.0), Including(1e14), "it is taken positive; 10¹⁰ A/cm² melts any contact"),
+    span(
+        Excluding(0.0),
+        Including(1e14),
+        "it is taken positive; 10¹⁰ A/cm² melts any contact",
+    ),
     Scale::CurrentDensity,
 );
 /// Spin accumulation u = (V↑ − V↓)/2: half the splitting, as a voltage.
@@ -310,7 +395,11 @@ pub const SPIN_ACCUMULATION: Kind = kind(
     "spin accumulation",
     <ElectricPotential as Measured>::DIMENSION,
     &["0.8 µV"],
-    span(Including(-100.0), Including(100.0), "it is a voltage within ±100 V"),
+    span(
+        Including(-100.0),
+        Including(100.0),
+        "it is a voltage within ±100 V",
+    ),
     Scale::Voltage,
 );
 /// Spin splitting Δμ = 2eu: the full splitting, as an energy.
@@ -318,7 +407,11 @@ pub const SPIN_SPLITTING: Kind = kind(
     "spin splitting",
     <Energy as Measured>::DIMENSION,
     &["2.9 meV"],
-    span(Including(-1e-16), Including(1e-16), "it is an energy of at most some hundred electronvolts"),
+    span(
+        Including(-1e-16),
+        Including(1e-16),
+        "it is an energy of at most some hundred electronvolts",
+    ),
     Scale::Energy,
 );
 /// Energy: gap, barrier height, affinity, work function.
@@ -326,7 +419,11 @@ pub const ENERGY: Kind = kind(
     "energy",
     <Energy as Measured>::DIMENSION,
     &["0.35 eV", "45 meV"],
-    span(Including(0.0), Including(1.7e-17), "it is not negative and at most about 100 eV"),
+    span(
+        Including(0.0),
+        Including(1.7e-17),
+        "it is not negative and at most about 100 eV",
+    ),
     Scale::Energy,
 );
 /// Carrier mobility.
@@ -342,7 +439,11 @@ pub const DIFFUSION: Kind = kind(
     "diffusion constant",
     <DiffusionCoefficient as Measured>::DIMENSION,
     &["2.8 cm²/s"],
-    span(Excluding(0.0), Including(1e4), "a diffusion constant is positive"),
+    span(
+        Excluding(0.0),
+        Including(1e4),
+        "a diffusion constant is positive",
+    ),
     Scale::Diffusion,
 );
 /// Spin lifetime.
@@ -350,7 +451,11 @@ pub const SPIN_LIFETIME: Kind = kind(
     "spin lifetime",
     <Time as Measured>::DIMENSION,
     &["1.3 ns", "84 ps"],
-    span(Excluding(0.0), Including(1.0), "a spin lifetime is positive and below a second"),
+    span(
+        Excluding(0.0),
+        Including(1.0),
+        "a spin lifetime is positive and below a second",
+    ),
     Scale::Time,
 );
 /// Magnetic field applied in vacuum.
@@ -377,7 +482,11 @@ pub const LATTICE_LENGTH: Kind = kind(
     "lattice length",
     <Length as Measured>::DIMENSION,
     &["5.43 Å", "0.2106 nm"],
-    span(Excluding(0.0), Including(1e-7), "it is positive and below 100 nm"),
+    span(
+        Excluding(0.0),
+        Including(1e-7),
+        "it is positive and below 100 nm",
+    ),
     Scale::Lattice,
 );
 /// Relative permittivity.
@@ -393,7 +502,11 @@ pub const EFFECTIVE_MASS: Kind = kind(
     "effective mass",
     Dimension::NONE,
     &["0.26"],
-    span(Excluding(0.0), Including(100.0), "it is positive, in units of the free-electron mass"),
+    span(
+        Excluding(0.0),
+        Including(100.0),
+        "it is positive, in units of the free-electron mass",
+    ),
     Scale::Plain,
 );
 /// Saturation magnetization.
@@ -409,7 +522,11 @@ pub const DECADE_THICKNESS: Kind = kind(
     "thickness per decade",
     <Length as Measured>::DIMENSION,
     &["0.36 nm"],
-    span(Excluding(0.0), Including(1e-8), "it is positive and below 10 nm"),
+    span(
+        Excluding(0.0),
+        Including(1e-8),
+        "it is positive and below 10 nm",
+    ),
     Scale::Slope,
 );
 /// A pure number without further meaning: a law's exponent, a g factor.

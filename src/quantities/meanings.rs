@@ -37,11 +37,11 @@
 //! assert!((full.si() / (2.0 * 1.602176634e-22) - 1.0).abs() < 1e-15);
 //! ```
 
+use super::constants::ELEMENTARY_CHARGE;
 use super::dimensions::{
     Dimension, ElectricPotential, ElectricalResistance, ElectricalResistivity, Energy, Length,
     Measured, Ratio, ResistanceTimesArea,
 };
-use super::constants::ELEMENTARY_CHARGE;
 
 macro_rules! meaning {
     ($(#[$text:meta])* $name:ident over $base:ty) => {

@@ -138,14 +138,24 @@ pub struct Assessment {
 ///
 /// # Errors
 /// [`StackFault`]; designs that were read without fault do not give one.
-pub fn assess(design: &Design, device: Vertical, library: &Library) -> Result<Assessment, StackFault> {
+pub fn assess(
+    design: &Design,
+    device: Vertical,
+    library: &Library,
+) -> Result<Assessment, StackFault> {
     let central = device.table.central();
     let blueprint = device.blueprint(central.view());
     let stack = blueprint.stack()?;
     let outcome = device.outcome_of(&stack);
-    let (parallel, antiparallel) = (stack.solve(State::Parallel), stack.solve(State::Antiparallel));
+    let (parallel, antiparallel) = (
+        stack.solve(State::Parallel),
+        stack.solve(State::Antiparallel),
+    );
     let mismatch = mismatch(&device, &blueprint)?;
-    let wish = design.goals.first().map_or_else(|| Wish::default_of(&device), Wish::of);
+    let wish = design
+        .goals
+        .first()
+        .map_or_else(|| Wish::default_of(&device), Wish::of);
     let mut goals = Vec::new();
     for goal in &design.goals {
         let wish = Wish::of(goal);
@@ -154,19 +164,34 @@ pub fn assess(design: &Design, device: Vertical, library: &Library) -> Result<As
             goal: goal.clone(),
             value,
             met: goal.comparison.met(value),
-            window: window(&device, &blueprint, &device.channel_contacts, wish, Demand::Goal(goal.comparison)),
+            window: window(
+                &device,
+                &blueprint,
+                &device.channel_contacts,
+                wish,
+                Demand::Goal(goal.comparison),
+            ),
             half_metal: half_metal(&device, &blueprint, wish, goal.comparison)?,
         });
     }
     let default_demand = Demand::FractionOfMost(DEFAULT_FRACTION);
-    let default_window = goals
-        .is_empty()
-        .then(|| window(&device, &blueprint, &device.channel_contacts, wish, default_demand));
+    let default_window = goals.is_empty().then(|| {
+        window(
+            &device,
+            &blueprint,
+            &device.channel_contacts,
+            wish,
+            default_demand,
+        )
+    });
     let default_half_metal = match &default_window {
         Some(Ok(w)) => Some(half_metal(&device, &blueprint, wish, w.threshold)?),
         _ => None,
     };
-    let demand = design.goals.first().map_or(default_demand, |g| Demand::Goal(g.comparison));
+    let demand = design
+        .goals
+        .first()
+        .map_or(default_demand, |g| Demand::Goal(g.comparison));
     let contact_windows = if device.channel_contacts.len() > 1 {
         device
             .channel_contacts
@@ -228,16 +253,25 @@ fn rule_of_thumb(
 ) -> Option<[ResistanceAreaProduct; 2]> {
     let m = mismatch.filter(|m| m.r_interface.si() > 0.0)?;
     let t = m.reduced_length.filter(|t| *t < 1.0)?;
-    let applies = wish.target == Target::Magnetoresistance && design.written == Written::TwoContacts;
+    let applies =
+        wish.target == Target::Magnetoresistance && design.written == Written::TwoContacts;
     let g = m.asymmetry.si();
     let ra = (1.0 - g) * (1.0 + g) * m.r_channel.si();
-    applies.then(|| [ResistanceAreaProduct::from_si(ra * t), ResistanceAreaProduct::from_si(ra / t)])
+    applies.then(|| {
+        [
+            ResistanceAreaProduct::from_si(ra * t),
+            ResistanceAreaProduct::from_si(ra / t),
+        ]
+    })
 }
 
 /// V↑ and V↓ at a face per current density, Ω m².
 #[must_use]
 pub fn channel_potentials(face: &Face) -> [ResistanceTimesArea; 2] {
-    let (v, u) = (face.potential_per_current_density, face.accumulation_per_current_density);
+    let (v, u) = (
+        face.potential_per_current_density,
+        face.accumulation_per_current_density,
+    );
     [v + u, v - u]
 }
 
@@ -252,8 +286,15 @@ fn honesty(device: &Vertical, shares: &[Share]) -> Honesty {
         recalled: count(&|i| i.provenance.is_recalled()),
         assumed: count(&|i| i.provenance.is_assumed() && !i.provenance.is_recalled()),
         not_spread: inputs.len() - shares.iter().map(|s| s.columns.len()).sum::<usize>(),
-        doubtful_carriers: carriers.iter().filter(|s| doubtful(&inputs[s.first()])).count(),
-        doubtful_share: shares.iter().filter(|s| doubtful(&inputs[s.first()])).map(|s| s.share).sum(),
+        doubtful_carriers: carriers
+            .iter()
+            .filter(|s| doubtful(&inputs[s.first()]))
+            .count(),
+        doubtful_share: shares
+            .iter()
+            .filter(|s| doubtful(&inputs[s.first()]))
+            .map(|s| s.share)
+            .sum(),
         carriers,
     }
 }
@@ -264,7 +305,10 @@ fn check_values(design: &Design, device: &Vertical, library: &Library) -> Vec<Ch
     let (Some(f), Some(n)) = (material(device.injector), material(device.channel)) else {
         return Vec::new();
     };
-    let path = device.injector_contact.and_then(|i| device.name(Position::Element(i))).map(|n| &n.path);
+    let path = device
+        .injector_contact
+        .and_then(|i| device.name(Position::Element(i)))
+        .map(|n| &n.path);
     let barrier = design.parts.iter().find_map(|p| match p {
         Part::Contact(c) if Some(&c.path) == path => {
             c.material.as_ref().and_then(|m| library.id_of(&m.value))
@@ -276,7 +320,12 @@ fn check_values(design: &Design, device: &Vertical, library: &Library) -> Vec<Ch
         .into_iter()
         .filter(|(_, b, c)| *b == barrier && c.as_deref() == Some(n.as_str()))
         .filter_map(|(id, _, _)| library.interface(&id, &faults))
-        .flat_map(|i| i.contacts.iter().flat_map(check_numbers).collect::<Vec<_>>())
+        .flat_map(|i| {
+            i.contacts
+                .iter()
+                .flat_map(check_numbers)
+                .collect::<Vec<_>>()
+        })
         .collect()
 }
 
@@ -299,7 +348,12 @@ fn check_numbers(c: &ContactRecord) -> Vec<CheckValue> {
 
 fn references(a: &Assessment, library: &Library) -> Vec<(String, Option<Reference>)> {
     let mut keys: Vec<String> = Vec::new();
-    let inputs = a.device.table.inputs().iter().chain(a.device.likely.iter().map(|l| &l.input));
+    let inputs = a
+        .device
+        .table
+        .inputs()
+        .iter()
+        .chain(a.device.likely.iter().map(|l| &l.input));
     let from_inputs = inputs.filter_map(|i| match &i.provenance.origin {
         Origin::Record { source, .. } => source.clone(),
         Origin::Design { .. } => None,

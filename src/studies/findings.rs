@@ -279,9 +279,9 @@ impl Finding {
             Self::WindowUnknown => "window-unknown",
             Self::BareSemiconductor { .. } => "bare-semiconductor",
             Self::ThinChannel { .. } => "thin-channel",
-            Self::CurieTemperature { curie, temperature, .. } if temperature > curie => {
-                "above-curie-temperature"
-            }
+            Self::CurieTemperature {
+                curie, temperature, ..
+            } if temperature > curie => "above-curie-temperature",
             Self::CurieTemperature { .. } => "near-curie-temperature",
             Self::HighBias { .. } => "high-bias",
             Self::OnlyABound { .. } => "only-a-bound",
@@ -305,13 +305,18 @@ impl Finding {
     }
 
     fn order(&self) -> usize {
-        RULES.iter().position(|r| r.name == self.rule_name()).unwrap_or(usize::MAX)
+        RULES
+            .iter()
+            .position(|r| r.name == self.rule_name())
+            .unwrap_or(usize::MAX)
     }
 
     /// Severity.
     #[must_use]
     pub fn severity(&self) -> Severity {
-        RULES.get(self.order()).map_or(Severity::Remark, |r| r.severity)
+        RULES
+            .get(self.order())
+            .map_or(Severity::Remark, |r| r.severity)
     }
 }
 

@@ -1,13 +1,14 @@
 //! Why the polarization is what it is: what the contact offers and what the channel takes.
 
+use crate::designs::goals::Comparison;
 use crate::devices::vertical::{Blueprint, Position, Vertical};
 use crate::models::ladder::{StackFault, State};
 use crate::numerics::root::bracketed_root;
 use crate::quantities::dimensions::{Measured, ResistanceTimesArea};
 use crate::quantities::meanings::{
-    BulkAsymmetry, InterfaceAsymmetry, InterfaceSpinResistance, ResistanceAreaProduct, SpinResistance,
+    BulkAsymmetry, InterfaceAsymmetry, InterfaceSpinResistance, ResistanceAreaProduct,
+    SpinResistance,
 };
-use crate::designs::goals::Comparison;
 
 use super::target::Wish;
 
@@ -56,11 +57,24 @@ pub fn mismatch(device: &Vertical, blueprint: &Blueprint) -> Result<Option<Misma
     let face = device.injector_face();
     let sides = stack.sides(face, State::Parallel);
     let (contact, channel, source, far) = if device.injects_from_left {
-        (sides.left_impedance, sides.right_impedance, sides.left_source, sides.right_source)
+        (
+            sides.left_impedance,
+            sides.right_impedance,
+            sides.left_source,
+            sides.right_source,
+        )
     } else {
-        (sides.right_impedance, sides.left_impedance, sides.right_source, sides.left_source)
+        (
+            sides.right_impedance,
+            sides.left_impedance,
+            sides.right_source,
+            sides.left_source,
+        )
     };
-    let (Some(n), Some(f)) = (blueprint.layer(device.channel), blueprint.layer(device.injector)) else {
+    let (Some(n), Some(f)) = (
+        blueprint.layer(device.channel),
+        blueprint.layer(device.injector),
+    ) else {
         return Ok(None);
     };
     let solution = stack.solve(State::Parallel);
@@ -68,14 +82,24 @@ pub fn mismatch(device: &Vertical, blueprint: &Blueprint) -> Result<Option<Misma
     let interface = device.injector_contact.and_then(|i| blueprint.interface(i));
     let zero = InterfaceSpinResistance::from_si(0.0);
     let (r_interface, asymmetry) = interface
-        .map_or((zero, InterfaceAsymmetry::from_si(0.0)), |x| (x.spin_resistance, x.asymmetry));
+        .map_or((zero, InterfaceAsymmetry::from_si(0.0)), |x| {
+            (x.spin_resistance, x.asymmetry)
+        });
     let t = n.thickness.si();
     Ok(Some(Mismatch {
         contact: ResistanceTimesArea::from_si(contact),
         channel: ResistanceTimesArea::from_si(channel),
         offered: if contact > 0.0 { source / contact } else { 0.0 },
-        crossing: if contact + channel > 0.0 { source / (contact + channel) } else { 0.0 },
-        from_far_side: if contact + channel > 0.0 { far / (contact + channel) } else { 0.0 },
+        crossing: if contact + channel > 0.0 {
+            source / (contact + channel)
+        } else {
+            0.0
+        },
+        from_far_side: if contact + channel > 0.0 {
+            far / (contact + channel)
+        } else {
+            0.0
+        },
         r_channel: n.spin_resistance(),
         r_ferromagnet: f.spin_resistance(),
         r_interface,
@@ -95,7 +119,9 @@ fn dwell(
     reduced_length: f64,
     r_channel: SpinResistance,
 ) -> Option<f64> {
-    let [first, second] = device.channel_contacts.as_slice() else { return None };
+    let [first, second] = device.channel_contacts.as_slice() else {
+        return None;
+    };
     let r = |i: usize| blueprint.interface(i).map(|x| x.spin_resistance.si());
     let (a, b) = (r(*first)?, r(*second)?);
     (reduced_length.is_finite() && a > 0.0 && b > 0.0)
@@ -152,11 +178,16 @@ pub fn half_metal(
         let mut moved = bare.clone();
         for at in &magnets {
             if let Some(layer) = moved.layer_mut(*at) {
-                let sign = if layer.asymmetry.si() < 0.0 { -1.0 } else { 1.0 };
+                let sign = if layer.asymmetry.si() < 0.0 {
+                    -1.0
+                } else {
+                    1.0
+                };
                 layer.asymmetry = BulkAsymmetry::from_si(sign * beta);
             }
         }
-        wish.of_blueprint(device, &moved).map_or(f64::NAN, |v| demand.margin(v))
+        wish.of_blueprint(device, &moved)
+            .map_or(f64::NAN, |v| demand.margin(v))
     };
     let points = 120;
     let floor = NEAREST_TO_ONE.log10();
@@ -166,7 +197,11 @@ pub fn half_metal(
         let here = margin(x);
         if here >= 0.0 {
             // The first point, β = 0, can meet a goal `a .. b` by nothing but the other contact.
-            let root = if i == 0 { Ok(x) } else { bracketed_root(margin, x, previous.0, 1e-12) };
+            let root = if i == 0 {
+                Ok(x)
+            } else {
+                bracketed_root(margin, x, previous.0, 1e-12)
+            };
             return Ok(root.map_or(HalfMetal::NotFound, |root| HalfMetal::Needed {
                 short_of_one: 10.0_f64.powf(root),
             }));

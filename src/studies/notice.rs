@@ -52,7 +52,9 @@ pub(super) fn notice(a: &Assessment, design: &Design, library: &Library) -> Vec<
         }
     }
     if !library.replaced().is_empty() {
-        out.push(Finding::RecordReplaced { ids: library.replaced().to_vec() });
+        out.push(Finding::RecordReplaced {
+            ids: library.replaced().to_vec(),
+        });
     }
     ordered(out)
 }
@@ -63,7 +65,12 @@ fn windows(a: &Assessment, out: &mut Vec<Finding>) {
         .iter()
         .any(|(_, w)| w.as_ref().is_ok_and(|w| !w.intervals.is_empty()));
     let mut unknown = false;
-    for window in a.goals.iter().map(|g| &g.window).chain(a.default_window.as_ref()) {
+    for window in a
+        .goals
+        .iter()
+        .map(|g| &g.window)
+        .chain(a.default_window.as_ref())
+    {
         match window {
             Ok(w) if w.intervals.is_empty() => out.push(Finding::GoalOutOfReach {
                 target: w.wish.target,
@@ -72,7 +79,9 @@ fn windows(a: &Assessment, out: &mut Vec<Finding>) {
                 alone,
             }),
             Ok(w) if !w.intervals.iter().any(|i| i.holds(w.here)) => {
-                out.push(Finding::OutsideWindow { window: Box::new(w.clone()) });
+                out.push(Finding::OutsideWindow {
+                    window: Box::new(w.clone()),
+                });
             }
             Err(NoWindow::NoAsymmetry) => unknown = true,
             _ => {}
@@ -97,21 +106,34 @@ fn thicknesses(a: &Assessment, design: &Design, out: &mut Vec<Finding>) {
         let (t, length) = (layer.thickness, layer.length);
         let is_end = !matches!(a.device.channel, Position::Element(_));
         if is_end && t.si() < THICK_FERROMAGNET * length.si() {
-            out.push(Finding::ThinChannel { thickness: t, length });
+            out.push(Finding::ThinChannel {
+                thickness: t,
+                length,
+            });
         }
         if !is_end && a.device.has_two_states && t.si() > length.si() {
-            out.push(Finding::LongChannel { thickness: t, length });
+            out.push(Finding::LongChannel {
+                thickness: t,
+                length,
+            });
         }
     }
-    for (at, interface) in
-        [(Position::LeftEnd, 0), (Position::RightEnd, a.blueprint.elements.len().wrapping_sub(1))]
-    {
+    for (at, interface) in [
+        (Position::LeftEnd, 0),
+        (
+            Position::RightEnd,
+            a.blueprint.elements.len().wrapping_sub(1),
+        ),
+    ] {
         if !stated(at)
             && a.device.is_ferromagnet(at)
             && let Some(layer) = a.blueprint.layer(at)
             && let Some(Caveat::ThinFerromagnet { .. }) = validity::ferromagnet(layer)
         {
-            let r_b = a.blueprint.interface(interface).map_or(0.0, |x| x.spin_resistance.si());
+            let r_b = a
+                .blueprint
+                .interface(interface)
+                .map_or(0.0, |x| x.spin_resistance.si());
             if layer.spin_resistance().si() >= HIDDEN * r_b {
                 out.push(Finding::ThinFerromagnet {
                     path: path(a, at),
@@ -134,14 +156,23 @@ fn contact_spec<'a>(design: &'a Design, path: &str) -> Option<&'a ContactSpec> {
 fn barriers(a: &Assessment, design: &Design, library: &Library, out: &mut Vec<Finding>) {
     let faults = Faults::default();
     for part in &design.parts {
-        let Part::Contact(contact) = part else { continue };
-        let Some(thickness) = &contact.thickness else { continue };
+        let Part::Contact(contact) = part else {
+            continue;
+        };
+        let Some(thickness) = &contact.thickness else {
+            continue;
+        };
         let height = contact
             .material
             .as_ref()
             .and_then(|m| library.id_of(&m.value))
             .and_then(|id| library.material(&id, &faults))
-            .and_then(|m| m.values.iter().find(|v| v.property.name == "monolayer").map(|v| v.reading.si));
+            .and_then(|m| {
+                m.values
+                    .iter()
+                    .find(|v| v.property.name == "monolayer")
+                    .map(|v| v.reading.si)
+            });
         if let Some(height) = height
             && thickness.value.si < 2.0 * height * (1.0 - 1e-9)
         {
@@ -152,9 +183,13 @@ fn barriers(a: &Assessment, design: &Design, library: &Library, out: &mut Vec<Fi
             });
         }
     }
-    let Some(j) = a.device.current_density else { return };
+    let Some(j) = a.device.current_density else {
+        return;
+    };
     for (i, _) in a.blueprint.elements.iter().enumerate() {
-        let Some(interface) = a.blueprint.interface(i) else { continue };
+        let Some(interface) = a.blueprint.interface(i) else {
+            continue;
+        };
         let p = a.faces[0].get(i).map_or(0.0, |f| f.polarization.si());
         let r_b = interface.spin_resistance.si();
         let voltage = r_b * (1.0 - interface.asymmetry.si() * p) * j.si();
@@ -172,11 +207,16 @@ fn barriers(a: &Assessment, design: &Design, library: &Library, out: &mut Vec<Fi
 
 fn bare_contacts(a: &Assessment, out: &mut Vec<Finding>) {
     for element in 0..a.blueprint.elements.len() {
-        if a.blueprint.interface(element).is_none_or(|x| x.spin_resistance.si() > 0.0) {
+        if a.blueprint
+            .interface(element)
+            .is_none_or(|x| x.spin_resistance.si() > 0.0)
+        {
             continue;
         }
         let sides = a.device.neighbours(element);
-        let [Some(left), Some(right)] = sides.map(|at| a.device.name(at)) else { continue };
+        let [Some(left), Some(right)] = sides.map(|at| a.device.name(at)) else {
+            continue;
+        };
         let magnet = sides.into_iter().find(|at| a.device.is_ferromagnet(*at));
         let semiconductor = [left, right].into_iter().find(|n| n.semiconductor);
         match (magnet.and_then(|at| a.device.name(at)), semiconductor) {
@@ -185,8 +225,13 @@ fn bare_contacts(a: &Assessment, out: &mut Vec<Finding>) {
                 channel: n.label.clone(),
             }),
             // Between layers of stated numbers the user decides; two layers of one material join.
-            _ if left.material.is_some() && right.material.is_some() && left.material != right.material => {
-                out.push(Finding::InterfaceLeftOut { path: path(a, Position::Element(element)) });
+            _ if left.material.is_some()
+                && right.material.is_some()
+                && left.material != right.material =>
+            {
+                out.push(Finding::InterfaceLeftOut {
+                    path: path(a, Position::Element(element)),
+                });
             }
             _ => {}
         }
@@ -196,14 +241,23 @@ fn bare_contacts(a: &Assessment, out: &mut Vec<Finding>) {
 fn magnets(a: &Assessment, library: &Library, out: &mut Vec<Finding>) {
     let faults = Faults::default();
     let temperature = a.device.temperature.si();
-    let wanted = Wanted { temperature, doping: None, carrier_type: None, dopant: None };
+    let wanted = Wanted {
+        temperature,
+        doping: None,
+        carrier_type: None,
+        dopant: None,
+    };
     let mut told: Vec<String> = Vec::new();
     for at in a.device.layers() {
-        let Some(id) = a.device.name(at).and_then(|n| n.material.clone()) else { continue };
+        let Some(id) = a.device.name(at).and_then(|n| n.material.clone()) else {
+            continue;
+        };
         if !a.device.is_ferromagnet(at) || told.contains(&id) {
             continue;
         }
-        let Some(material) = library.material(&id, &faults) else { continue };
+        let Some(material) = library.material(&id, &faults) else {
+            continue;
+        };
         if let Ok(chosen) = choose::value(&material, "curie_temperature", &wanted)
             && temperature > NEAR_CURIE * chosen.record.reading.si
         {
@@ -221,19 +275,30 @@ fn magnets(a: &Assessment, library: &Library, out: &mut Vec<Finding>) {
 /// Nonlinear and drift effects, for channels that are not metallic: neither a metal nor a semiconductor
 /// doped above its critical density.
 fn strained(a: &Assessment, library: &Library, design: &Design, out: &mut Vec<Finding>) {
-    let (Some(layer), Some(j)) = (a.blueprint.layer(a.device.channel), a.device.current_density) else {
+    let (Some(layer), Some(j)) = (
+        a.blueprint.layer(a.device.channel),
+        a.device.current_density,
+    ) else {
         return;
     };
     let name = a.device.name(a.device.channel);
-    if name.is_some_and(|n| n.material.is_some() && !n.semiconductor) || is_metallic(a, library, design) {
+    if name.is_some_and(|n| n.material.is_some() && !n.semiconductor)
+        || is_metallic(a, library, design)
+    {
         return;
     }
     let (p, ap) = (a.outcome.accumulation, a.outcome.accumulation_antiparallel);
     let larger = if ap.si().abs() > p.si().abs() { ap } else { p };
     for caveat in validity::channel(layer, larger, j, a.device.temperature) {
         match caveat {
-            Caveat::Nonlinear { accumulation, thermal } => {
-                out.push(Finding::NotLinear { accumulation, thermal });
+            Caveat::Nonlinear {
+                accumulation,
+                thermal,
+            } => {
+                out.push(Finding::NotLinear {
+                    accumulation,
+                    thermal,
+                });
             }
             Caveat::Drift { voltage, thermal } => out.push(Finding::Drift { voltage, thermal }),
             Caveat::ThinFerromagnet { .. } => {}
@@ -262,7 +327,12 @@ fn is_metallic(a: &Assessment, library: &Library, design: &Design) -> bool {
 }
 
 fn all_inputs(a: &Assessment) -> Vec<&Input> {
-    a.device.table.inputs().iter().chain(a.device.likely.iter().map(|l| &l.input)).collect()
+    a.device
+        .table
+        .inputs()
+        .iter()
+        .chain(a.device.likely.iter().map(|l| &l.input))
+        .collect()
 }
 
 /// What the marks of the records say.
@@ -272,13 +342,25 @@ fn records(a: &Assessment, out: &mut Vec<Finding>) {
     let mut dopants = Vec::new();
     let (mut wanted_doping, mut wanted_dopant) = (0.0, String::new());
     for input in all_inputs(a) {
-        let record = input.provenance.records().first().cloned().unwrap_or_default();
+        let record = input
+            .provenance
+            .records()
+            .first()
+            .cloned()
+            .unwrap_or_default();
         for mark in &input.provenance.marks {
             match mark {
-                Mark::OtherTemperature { record, wanted } if input.name.ends_with("spin_memory_loss") => {
-                    out.push(Finding::MemoryLossOutsideTemperature { record: *record, wanted: *wanted });
+                Mark::OtherTemperature { record, wanted }
+                    if input.name.ends_with("spin_memory_loss") =>
+                {
+                    out.push(Finding::MemoryLossOutsideTemperature {
+                        record: *record,
+                        wanted: *wanted,
+                    });
                 }
-                Mark::OtherTemperature { record, .. } => temperatures.push((input.name.clone(), *record)),
+                Mark::OtherTemperature { record, .. } => {
+                    temperatures.push((input.name.clone(), *record))
+                }
                 Mark::OtherDoping { record, wanted } => {
                     dopings.push((input.name.clone(), *record));
                     wanted_doping = *wanted;
@@ -301,10 +383,16 @@ fn records(a: &Assessment, out: &mut Vec<Finding>) {
         });
     }
     if !dopings.is_empty() {
-        out.push(Finding::DopingOutsideData { inputs: dopings, wanted: wanted_doping });
+        out.push(Finding::DopingOutsideData {
+            inputs: dopings,
+            wanted: wanted_doping,
+        });
     }
     if !dopants.is_empty() {
-        out.push(Finding::OtherDopant { inputs: dopants, wanted: wanted_dopant });
+        out.push(Finding::OtherDopant {
+            inputs: dopants,
+            wanted: wanted_dopant,
+        });
     }
     let table = a.device.table.inputs();
     let uncertain: Vec<Named> = a
@@ -321,7 +409,10 @@ fn records(a: &Assessment, out: &mut Vec<Finding>) {
         })
         .collect();
     if !uncertain.is_empty() {
-        out.push(Finding::UncertainInputsMatter { target: a.wish.target, inputs: uncertain });
+        out.push(Finding::UncertainInputsMatter {
+            target: a.wish.target,
+            inputs: uncertain,
+        });
     }
 }
 
@@ -352,9 +443,16 @@ fn numbers(a: &Assessment, out: &mut Vec<Finding>) {
             bounds.push(input.name.clone());
         }
         if input.name.ends_with("asymmetry") {
-            let sd = input.reading.spread.standard_deviation(value).unwrap_or(0.0);
+            let sd = input
+                .reading
+                .spread
+                .standard_deviation(value)
+                .unwrap_or(0.0);
             if value.abs() + sd >= 1.0 || 1.0 - value.abs() < NEAR_ONE {
-                out.push(Finding::AsymmetryNearOne { name: input.name.clone(), value });
+                out.push(Finding::AsymmetryNearOne {
+                    name: input.name.clone(),
+                    value,
+                });
             }
         }
     }
@@ -370,7 +468,12 @@ fn measured_otherwise(a: &Assessment, out: &mut Vec<Finding>) {
         .checks
         .iter()
         .filter(|c| c.is_resistance_area)
-        .min_by(|x, y| (x.reading.si / here).ln().abs().total_cmp(&(y.reading.si / here).ln().abs()));
+        .min_by(|x, y| {
+            (x.reading.si / here)
+                .ln()
+                .abs()
+                .total_cmp(&(y.reading.si / here).ln().abs())
+        });
     if let Some(c) = nearest
         && apart(c.reading.si, here)
     {
@@ -383,7 +486,10 @@ fn measured_otherwise(a: &Assessment, out: &mut Vec<Finding>) {
     }
     let p = a.outcome.polarization.si();
     for c in &a.checks {
-        let comparable = matches!(c.kind, ContactKind::Optical | ContactKind::TransparentContact);
+        let comparable = matches!(
+            c.kind,
+            ContactKind::Optical | ContactKind::TransparentContact
+        );
         if comparable && !c.is_resistance_area && apart(c.reading.si.abs(), p.abs()) {
             out.push(Finding::MeasuredOtherwise {
                 record: c.record.clone(),

@@ -29,19 +29,23 @@ impl Share {
 /// Columns that move together: the same key of the same record.
 fn groups(device: &Vertical) -> Vec<Vec<usize>> {
     let inputs = device.table.inputs();
-    let key = |i: usize| {
-        let record = inputs[i].provenance.records().first().cloned()?;
-        Some((record, inputs[i].name.rsplit('.').next().unwrap_or("").to_owned()))
+    let same = |i: usize, j: usize| {
+        let (a, b) = (&inputs[i], &inputs[j]);
+        let key = |name: &str| name.rsplit('.').next().map(str::to_owned);
+        let records = a.provenance.records();
+        !records.is_empty() && records == b.provenance.records() && key(&a.name) == key(&b.name)
     };
-    let mut all: Vec<(Option<(String, String)>, Vec<usize>)> = Vec::new();
+    let mut all: Vec<Vec<usize>> = Vec::new();
     for i in 0..inputs.len() {
-        let this = key(i);
-        match all.iter_mut().find(|(known, _)| this.is_some() && *known == this) {
-            Some((_, columns)) => columns.push(i),
-            None => all.push((this, vec![i])),
+        match all
+            .iter_mut()
+            .find(|group| group.first().is_some_and(|j| same(i, *j)))
+        {
+            Some(group) => group.push(i),
+            None => all.push(vec![i]),
         }
     }
-    all.into_iter().map(|(_, columns)| columns).collect()
+    all
 }
 
 /// Shares of all inputs that have a spread, largest first. Inputs whose spread is exact, a bound or
@@ -62,7 +66,11 @@ pub fn shares(device: &Vertical, wish: Wish) -> Result<Vec<Share>, StackFault> {
         }
         if !changes.is_empty() {
             let change = changes.iter().sum::<f64>() / changes.len() as f64;
-            all.push(Share { columns, change, share: 0.0 });
+            all.push(Share {
+                columns,
+                change,
+                share: 0.0,
+            });
         }
     }
     let total: f64 = all.iter().map(|s| s.change * s.change).sum();
@@ -73,7 +81,11 @@ pub fn shares(device: &Vertical, wish: Wish) -> Result<Vec<Share>, StackFault> {
     }
     // Equal shares differ in the last bits: the order of the table breaks the tie.
     let whole = |s: &Share| (s.share * 1e9).round();
-    all.sort_by(|a, b| whole(b).total_cmp(&whole(a)).then(a.columns.cmp(&b.columns)));
+    all.sort_by(|a, b| {
+        whole(b)
+            .total_cmp(&whole(a))
+            .then(a.columns.cmp(&b.columns))
+    });
     Ok(all)
 }
 

@@ -17,16 +17,25 @@ impl Wish {
     /// The wish of a goal.
     #[must_use]
     pub fn of(goal: &Goal) -> Self {
-        Self { target: goal.target, state: goal.state }
+        Self {
+            target: goal.target,
+            state: goal.state,
+        }
     }
 
     /// What is asked of a device without a goal: magnetoresistance of two contacts, injected polarization
     /// of one.
     #[must_use]
     pub fn default_of(device: &Vertical) -> Self {
-        let target =
-            if device.has_two_states { Target::Magnetoresistance } else { Target::InjectedPolarization };
-        Self { target, state: GoalState::Parallel }
+        let target = if device.has_two_states {
+            Target::Magnetoresistance
+        } else {
+            Target::InjectedPolarization
+        };
+        Self {
+            target,
+            state: GoalState::Parallel,
+        }
     }
 
     /// Its column in [`Outcome::COLUMNS`].
@@ -50,7 +59,11 @@ impl Wish {
     ///
     /// # Errors
     /// [`StackFault`]; designs that were read without fault do not give one.
-    pub fn of_blueprint(&self, device: &Vertical, blueprint: &Blueprint) -> Result<f64, StackFault> {
+    pub fn of_blueprint(
+        &self,
+        device: &Vertical,
+        blueprint: &Blueprint,
+    ) -> Result<f64, StackFault> {
         Ok(self.of_outcome(&device.outcome_of(&blueprint.stack()?)))
     }
 }

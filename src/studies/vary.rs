@@ -60,21 +60,46 @@ fn device_at(
 }
 
 fn row(value: f64, outcome: [f64; Outcome::COLUMNS.len()], goals: &[Goal]) -> VariedRow {
-    let goals_met = goals.iter().all(|g| g.comparison.met(outcome[Wish::of(g).column()]));
-    VariedRow { value, outcome, goals_met }
+    let goals_met = goals
+        .iter()
+        .all(|g| g.comparison.met(outcome[Wish::of(g).column()]));
+    VariedRow {
+        value,
+        outcome,
+        goals_met,
+    }
 }
 
 /// Follows a field. Where it is an input of the device, one column of the input matrix moves; where it
 /// decides which records are chosen (temperature, doping), the device is resolved again at each point.
 /// Either way each row equals a single run with that value set.
-pub fn vary(root: &Node, variation: Variation, library: &Library, faults: &Faults) -> Option<Varied> {
+pub fn vary(
+    root: &Node,
+    variation: Variation,
+    library: &Library,
+    faults: &Faults,
+) -> Option<Varied> {
     let (device, goals) = device_at(root, &variation, 0, library, faults)?;
     // A range can leave what a design allows at its far end: what a single run refuses is refused here.
-    device_at(root, &variation, variation.points.len().saturating_sub(1), library, faults)?;
+    device_at(
+        root,
+        &variation,
+        variation.points.len().saturating_sub(1),
+        library,
+        faults,
+    )?;
     let readings: Option<Vec<f64>> = variation
         .points
         .iter()
-        .map(|t| crate::quantities::text::read(t, variation.kind, &crate::quantities::unit::Context::default()).ok().map(|r| r.si))
+        .map(|t| {
+            crate::quantities::text::read(
+                t,
+                variation.kind,
+                &crate::quantities::unit::Context::default(),
+            )
+            .ok()
+            .map(|r| r.si)
+        })
         .collect();
     let column = device.table.column(&variation.path);
     let rows = match (column, readings) {
@@ -97,7 +122,10 @@ pub fn vary(root: &Node, variation: Variation, library: &Library, faults: &Fault
                     field: variation.path.clone(),
                     wrong: Wrong::Conflict {
                         reason: "the answers in this table do not depend on this field".to_owned(),
-                        help: Some("see `injectance assess DESIGN --full` for the inputs they depend on".to_owned()),
+                        help: Some(
+                            "see `injectance assess DESIGN --full` for the inputs they depend on"
+                                .to_owned(),
+                        ),
                     },
                 });
                 return None;
@@ -106,17 +134,30 @@ pub fn vary(root: &Node, variation: Variation, library: &Library, faults: &Fault
             for point in 0..variation.points.len() {
                 let (here, _) = device_at(root, &variation, point, library, faults)?;
                 let outcome = here.evaluate(here.table.central().view()).ok()?.si();
-                let value = values.as_ref().and_then(|v| v.get(point)).copied().unwrap_or(f64::NAN);
+                let value = values
+                    .as_ref()
+                    .and_then(|v| v.get(point))
+                    .copied()
+                    .unwrap_or(f64::NAN);
                 rows.push(row(value, outcome, &goals));
             }
             rows
         }
     };
     let chooses_records = column.is_none();
-    Some(Varied { variation, rows, device, goals, chooses_records })
+    Some(Varied {
+        variation,
+        rows,
+        device,
+        goals,
+        chooses_records,
+    })
 }
 
 /// Fields that decide which records are chosen rather than being inputs themselves.
 fn decides_records(variation: &Variation) -> bool {
-    matches!(variation.path.rsplit('.').next(), Some("temperature" | "doping"))
+    matches!(
+        variation.path.rsplit('.').next(),
+        Some("temperature" | "doping")
+    )
 }

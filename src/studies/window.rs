@@ -5,12 +5,14 @@
 //! root on the ladder. With several contacts at the channel their products are scaled by one factor; the
 //! window is told as the product of the reference contact.
 
-use crate::devices::vertical::{Blueprint, Vertical};
 use crate::designs::goals::Comparison;
+use crate::devices::vertical::{Blueprint, Vertical};
 use crate::models::ladder::StackFault;
 use crate::numerics::root::{RootFault, bracketed_root, largest};
 use crate::quantities::dimensions::Measured;
-use crate::quantities::meanings::{InterfaceAsymmetry, InterfaceSpinResistance, ResistanceAreaProduct};
+use crate::quantities::meanings::{
+    InterfaceAsymmetry, InterfaceSpinResistance, ResistanceAreaProduct,
+};
 
 use super::target::{Demand, Wish};
 
@@ -136,10 +138,16 @@ pub fn window(
     demand: Demand,
 ) -> Result<Window, NoWindow> {
     let product = |i: usize| {
-        blueprint.interface(i).map_or(0.0, |x| x.spin_resistance.resistance_area(x.asymmetry).si())
+        blueprint
+            .interface(i)
+            .map_or(0.0, |x| x.spin_resistance.resistance_area(x.asymmetry).si())
     };
     let first = *contacts.first().ok_or(NoWindow::NoContact)?;
-    let reference = contacts.iter().copied().find(|i| product(*i) > 0.0).unwrap_or(first);
+    let reference = contacts
+        .iter()
+        .copied()
+        .find(|i| product(*i) > 0.0)
+        .unwrap_or(first);
     let here = product(reference);
     let gamma_of = |i: usize| -> Result<(InterfaceAsymmetry, bool), NoWindow> {
         match blueprint.interface(i).map(|x| x.asymmetry) {
@@ -152,7 +160,12 @@ pub fn window(
                 .ok_or(NoWindow::NoAsymmetry),
         }
     };
-    let mut scaled = Scaled { device, base: blueprint.clone(), contacts: Vec::new(), wish };
+    let mut scaled = Scaled {
+        device,
+        base: blueprint.clone(),
+        contacts: Vec::new(),
+        wish,
+    };
     for i in contacts.iter().copied() {
         // A factor on nothing is nothing: beside a contact with resistance a bare one stays bare.
         let factor = if here > 0.0 { product(i) / here } else { 1.0 };
@@ -169,7 +182,9 @@ pub fn window(
     sharpen(&scaled, &mut grid, &f64::abs)?;
     sharpen(&scaled, &mut grid, &|v| -v.abs())?;
     let best_of = |score: &dyn Fn(f64) -> f64| {
-        grid.iter().copied().max_by(|a, b| score(a.1).total_cmp(&score(b.1)))
+        grid.iter()
+            .copied()
+            .max_by(|a, b| score(a.1).total_cmp(&score(b.1)))
     };
     let (threshold, fraction) = match demand {
         Demand::Goal(comparison) => (comparison, None),
@@ -205,9 +220,16 @@ fn follow(scaled: &Scaled<'_>) -> Result<Vec<(f64, f64)>, StackFault> {
     // With spin-memory loss a vanishing product is a spin sink, while none at all is no interface: the two
     // do not join, so the window begins at the smallest product looked at.
     let lossy = scaled.contacts.iter().any(|(i, _, _)| {
-        scaled.base.interface(*i).is_some_and(|x| x.memory_loss.si() > 0.0)
+        scaled
+            .base
+            .interface(*i)
+            .is_some_and(|x| x.memory_loss.si() > 0.0)
     });
-    let mut grid = if lossy { Vec::new() } else { vec![(0.0, scaled.value(0.0)?)] };
+    let mut grid = if lossy {
+        Vec::new()
+    } else {
+        vec![(0.0, scaled.value(0.0)?)]
+    };
     for i in 0..=count {
         let ra = SMALLEST * 10.0_f64.powf(i as f64 / POINTS_A_DECADE as f64);
         grid.push((ra, scaled.value(ra)?));
@@ -227,7 +249,11 @@ fn sharpen(
     for three in grid.windows(3) {
         let [a, b, c] = three else { continue };
         if a.0 > 0.0 && score(b.1) > score(a.1) && score(b.1) >= score(c.1) {
-            let f = |x: f64| scaled.value(10.0_f64.powf(x)).map_or(f64::NEG_INFINITY, score);
+            let f = |x: f64| {
+                scaled
+                    .value(10.0_f64.powf(x))
+                    .map_or(f64::NEG_INFINITY, score)
+            };
             let (x, _) = largest(f, a.0.log10(), c.0.log10(), 1e-7);
             let ra = 10.0_f64.powf(x);
             added.push((ra, scaled.value(ra)?));
@@ -301,7 +327,11 @@ fn intervals(
             continue;
         }
         // Inside a piece the demand is met everywhere or nowhere: look in its middle.
-        let middle = if *a > 0.0 { (a * b).sqrt() } else { (SMALLEST * b).sqrt().min(0.5 * b) };
+        let middle = if *a > 0.0 {
+            (a * b).sqrt()
+        } else {
+            (SMALLEST * b).sqrt().min(0.5 * b)
+        };
         if threshold.met(scaled.value(middle)?) {
             match found.last_mut() {
                 Some(piece) if piece.1 == i => piece.1 = i + 1,

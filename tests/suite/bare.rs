@@ -7,8 +7,8 @@ use injectance::models::ladder::{
 };
 use injectance::quantities::dimensions::{ElectricalResistivity, Measured};
 use injectance::quantities::meanings::{
-    BulkAsymmetry, InterfaceAsymmetry, InterfaceSpinResistance, SpinDiffusionLength, SpinMemoryLoss,
-    Thickness,
+    BulkAsymmetry, InterfaceAsymmetry, InterfaceSpinResistance, SpinDiffusionLength,
+    SpinMemoryLoss, Thickness,
 };
 
 pub use injectance::models::ladder::Magnetization::{Fixed, FixedOpposite, Free};
@@ -63,14 +63,22 @@ pub fn stack(left: End, elements: &[Element], right: End) -> Stack {
 
 /// One ferromagnetic contact to a thick normal medium; the last face is the normal side.
 pub fn single_contact(beta: f64, r_f: f64, r_n: f64, gamma: f64, r_b: f64) -> Stack {
-    stack(thick_ferromagnet(r_f, beta, Fixed), &[interface(r_b, gamma, 0.0, Fixed)], thick_normal(r_n))
+    stack(
+        thick_ferromagnet(r_f, beta, Fixed),
+        &[interface(r_b, gamma, 0.0, Fixed)],
+        thick_normal(r_n),
+    )
 }
 
 /// F/I/N/I/F with thick, equal magnets of which the right one flips.
 pub fn spin_valve(beta: f64, r_f: f64, r_n: f64, gamma: f64, r_b: f64, reduced: f64) -> Stack {
     stack(
         thick_ferromagnet(r_f, beta, Fixed),
-        &[interface(r_b, gamma, 0.0, Fixed), normal(r_n, 2e-6, reduced), interface(r_b, gamma, 0.0, Free)],
+        &[
+            interface(r_b, gamma, 0.0, Fixed),
+            normal(r_n, 2e-6, reduced),
+            interface(r_b, gamma, 0.0, Free),
+        ],
         thick_ferromagnet(r_f, beta, Free),
     )
 }
@@ -92,7 +100,11 @@ pub fn currents(solution: &Solution) -> Vec<f64> {
 
 /// u/j at all faces, Ω m².
 pub fn accumulations(solution: &Solution) -> Vec<f64> {
-    solution.faces.iter().map(|f| f.accumulation_per_current_density.si()).collect()
+    solution
+        .faces
+        .iter()
+        .map(|f| f.accumulation_per_current_density.si())
+        .collect()
 }
 
 /// RA in Ω m².

@@ -62,7 +62,14 @@ fn with_detector() -> String {
     let mut taken = 0;
     for line in text.lines() {
         let bare = line.strip_prefix("# ").filter(|l| {
-            ["[detector]", "ferromagnet = ", "barrier = ", "magnetoresistance = "].iter().any(|s| l.starts_with(s))
+            [
+                "[detector]",
+                "ferromagnet = ",
+                "barrier = ",
+                "magnetoresistance = ",
+            ]
+            .iter()
+            .any(|s| l.starts_with(s))
         });
         taken += usize::from(bare.is_some());
         // The channel ends at the detector then.
@@ -87,12 +94,25 @@ fn check_lines(what: &str, text: &str, width: usize) -> usize {
     let mut lines = 0;
     for line in text.lines() {
         let long = line.chars().count();
-        assert!(long <= width, "{what}: {long} characters where {width} were asked for: {line}");
-        assert_eq!(line.trim_end(), line, "{what}: blanks at the end of: {line:?}");
+        assert!(
+            long <= width,
+            "{what}: {long} characters where {width} were asked for: {line}"
+        );
+        assert_eq!(
+            line.trim_end(),
+            line,
+            "{what}: blanks at the end of: {line:?}"
+        );
         lines += 1;
     }
-    assert!(text.ends_with('\n') && !text.ends_with("\n\n"), "{what}: the end is not one line break");
-    assert!(!text.contains('\u{1b}'), "{what}: an escape sequence in a pipe");
+    assert!(
+        text.ends_with('\n') && !text.ends_with("\n\n"),
+        "{what}: the end is not one line break"
+    );
+    assert!(
+        !text.contains('\u{1b}'),
+        "{what}: an escape sequence in a pipe"
+    );
     lines
 }
 
@@ -101,32 +121,55 @@ const KEYS: [&str; 7] = ["value", "unit", "low", "high", "level", "status", "fro
 /// Counts the number objects and checks each.
 fn check_numbers(path: &str, value: &Value) -> usize {
     match value {
-        Value::Array(items) => {
-            items.iter().enumerate().map(|(i, v)| check_numbers(&format!("{path}.{i}"), v)).sum()
-        }
+        Value::Array(items) => items
+            .iter()
+            .enumerate()
+            .map(|(i, v)| check_numbers(&format!("{path}.{i}"), v))
+            .sum(),
         Value::Object(map) if map.contains_key("unit") => {
             let keys: Vec<&str> = map.keys().map(String::as_str).collect();
             assert_eq!(keys, KEYS, "{path}");
-            assert!(map["value"].is_number() || map["value"].is_null(), "{path}: {value}");
-            assert!(map["unit"].is_string() && map["from"].is_array(), "{path}: {value}");
+            assert!(
+                map["value"].is_number() || map["value"].is_null(),
+                "{path}: {value}"
+            );
+            assert!(
+                map["unit"].is_string() && map["from"].is_array(),
+                "{path}: {value}"
+            );
             let status = map["status"].as_str().unwrap();
-            assert!(["ok", "outside range", "not computed"].contains(&status), "{path}: {status}");
-            assert_eq!(map["value"].is_null(), status == "not computed", "{path}: {value}");
+            assert!(
+                ["ok", "outside range", "not computed"].contains(&status),
+                "{path}: {status}"
+            );
+            assert_eq!(
+                map["value"].is_null(),
+                status == "not computed",
+                "{path}: {value}"
+            );
             1
         }
-        Value::Object(map) => map.iter().map(|(k, v)| check_numbers(&format!("{path}.{k}"), v)).sum(),
+        Value::Object(map) => map
+            .iter()
+            .map(|(k, v)| check_numbers(&format!("{path}.{k}"), v))
+            .sum(),
         _ => 0,
     }
 }
 
 fn number(document: &Value, key: &str) -> f64 {
-    document[key]["value"].as_f64().unwrap_or_else(|| panic!("{key}: {}", document[key]))
+    document[key]["value"]
+        .as_f64()
+        .unwrap_or_else(|| panic!("{key}: {}", document[key]))
 }
 
 #[test]
 fn the_short_answer_fits_a_screen_and_every_answer_its_width() {
     let mut seen = 0;
-    for (name, text) in [("one contact", template()), ("two contacts", with_detector())] {
+    for (name, text) in [
+        ("one contact", template()),
+        ("two contacts", with_detector()),
+    ] {
         for width in [60_usize, 80, 140, 400] {
             let columns = width.to_string();
             for full in [false, true] {
@@ -141,12 +184,28 @@ fn the_short_answer_fits_a_screen_and_every_answer_its_width() {
                 let by_environment = run_at(here(), &columns, &arguments, &text);
                 arguments.extend(["--width", &columns]);
                 let by_option = run_at(here(), "999", &arguments, &text);
-                assert_eq!(by_environment.code, Some(0), "{what}: {}", by_environment.stderr);
-                assert_eq!(by_environment.stdout, by_option.stdout, "{what}: COLUMNS and --width differ");
-                assert!(by_environment.stderr.is_empty(), "{what}: {}", by_environment.stderr);
+                assert_eq!(
+                    by_environment.code,
+                    Some(0),
+                    "{what}: {}",
+                    by_environment.stderr
+                );
+                assert_eq!(
+                    by_environment.stdout, by_option.stdout,
+                    "{what}: COLUMNS and --width differ"
+                );
+                assert!(
+                    by_environment.stderr.is_empty(),
+                    "{what}: {}",
+                    by_environment.stderr
+                );
                 let lines = check_lines(&what, &by_environment.stdout, width);
                 if !full && width >= 80 {
-                    assert!(lines <= 24, "{what}: {lines} lines\n{}", by_environment.stdout);
+                    assert!(
+                        lines <= 24,
+                        "{what}: {lines} lines\n{}",
+                        by_environment.stdout
+                    );
                 }
                 if full {
                     assert!(lines > 24, "{what}: {lines} lines");
@@ -187,12 +246,22 @@ fn json_names_its_format_and_every_number_has_the_seven_keys() {
     for (text, least) in [(template(), 30), (with_detector(), 60)] {
         let document = json(&["assess", "-"], &text);
         assert_eq!(document["format"], "injectance.assessment/1");
-        assert_eq!(document["program"], format!("injectance {}", env!("CARGO_PKG_VERSION")));
+        assert_eq!(
+            document["program"],
+            format!("injectance {}", env!("CARGO_PKG_VERSION"))
+        );
         assert_eq!(document["design"], "standard input");
         let numbers = check_numbers("", &document);
         assert!(numbers >= least, "only {numbers} numbers");
     }
-    let vary = ["assess", "-", "--vary", "channel.thickness=10 .. 1000 nm", "--points", "5"];
+    let vary = [
+        "assess",
+        "-",
+        "--vary",
+        "channel.thickness=10 .. 1000 nm",
+        "--points",
+        "5",
+    ];
     let document = json(&vary, &template());
     assert_eq!(document["format"], "injectance.variation/1");
     assert_eq!(document["field"], "channel.thickness");
@@ -232,9 +301,18 @@ fn each_row_of_a_variation_equals_a_single_run_bit_for_bit() {
                 let mut of_row = 0;
                 assert_eq!(row["goals_met"], single["goals_met"], "{setting}");
                 let others = ["as_written", "value", "goals_met"];
-                for key in row.as_object().unwrap().keys().filter(|k| !others.contains(&k.as_str())) {
+                for key in row
+                    .as_object()
+                    .unwrap()
+                    .keys()
+                    .filter(|k| !others.contains(&k.as_str()))
+                {
                     let (a, b) = (number(row, key), number(&single, key));
-                    assert_eq!(a.to_bits(), b.to_bits(), "{setting}: {key}: {a:e} in the row, {b:e} alone");
+                    assert_eq!(
+                        a.to_bits(),
+                        b.to_bits(),
+                        "{setting}: {key}: {a:e} in the row, {b:e} alone"
+                    );
                     of_row += 1;
                 }
                 assert_eq!(of_row, columns, "{setting}");
@@ -248,23 +326,50 @@ fn each_row_of_a_variation_equals_a_single_run_bit_for_bit() {
 #[test]
 fn csv_holds_the_numbers_of_the_json() {
     let text = with_detector();
-    let vary = ["assess", "-", "--vary", "channel.thickness=10 .. 3000 nm", "--points", "7"];
+    let vary = [
+        "assess",
+        "-",
+        "--vary",
+        "channel.thickness=10 .. 3000 nm",
+        "--points",
+        "7",
+    ];
     let table = answer(&[&vary[..], &["--format", "csv"]].concat(), &text);
     let document = json(&vary, &text);
     let mut reader = csv::Reader::from_reader(table.as_bytes());
-    let heads: Vec<String> = reader.headers().unwrap().iter().map(str::to_owned).collect();
+    let heads: Vec<String> = reader
+        .headers()
+        .unwrap()
+        .iter()
+        .map(str::to_owned)
+        .collect();
     assert_eq!(heads[0], "as_written");
     assert_eq!(heads[1], "channel.thickness (m)");
     let mut compared = 0;
-    for (record, row) in reader.records().map(Result::unwrap).zip(document["rows"].as_array().unwrap()) {
+    for (record, row) in reader
+        .records()
+        .map(Result::unwrap)
+        .zip(document["rows"].as_array().unwrap())
+    {
         assert_eq!(record.len(), heads.len());
         assert_eq!(row["as_written"], record[0]);
-        assert_eq!(record[record.len() - 1], row["goals_met"].as_bool().unwrap().to_string());
+        assert_eq!(
+            record[record.len() - 1],
+            row["goals_met"].as_bool().unwrap().to_string()
+        );
         for (head, cell) in heads[..heads.len() - 1].iter().zip(&record).skip(1) {
             let (name, unit) = head.strip_suffix(')').unwrap().split_once(" (").unwrap();
-            let key = if name == "channel.thickness" { "value" } else { name };
+            let key = if name == "channel.thickness" {
+                "value"
+            } else {
+                name
+            };
             assert_eq!(row[key]["unit"], unit, "{head}");
-            assert_eq!(cell.parse::<f64>().unwrap().to_bits(), number(row, key).to_bits(), "{head}: {cell}");
+            assert_eq!(
+                cell.parse::<f64>().unwrap().to_bits(),
+                number(row, key).to_bits(),
+                "{head}: {cell}"
+            );
             compared += 1;
         }
     }
@@ -292,14 +397,46 @@ fn without_places(mut document: Value) -> Value {
 fn a_setting_answers_as_the_edited_file_does() {
     let text = template();
     let cases: &[(&str, &str, &str)] = &[
-        ("channel.thickness=40 nm", "thickness = \"2 µm\"", "thickness = \"40 nm\""),
-        ("channel.thickness=\"40 nm\"", "thickness = \"2 µm\"", "thickness = \"40 nm\""),
-        ("temperature = 77 K", "temperature = \"300 K\"", "temperature = \"77 K\""),
-        ("injector.ferromagnet.thickness=2 nm", "thickness = \"40 nm\" }\n# resistance_area", "thickness = \"2 nm\" }\n# resistance_area"),
-        ("injector.barrier.resistance_area=2 kΩ µm²", "resistance_area = \"100 Ω µm²\", thickness", "resistance_area = \"2 kΩ µm²\", thickness"),
-        ("goal.injected_polarization=>= 30 %", "injected_polarization = \">= 10 %\"", "injected_polarization = \">= 30 %\""),
-        ("injector.barrier.interface_asymmetry=0.3", "thickness = \"1.2 nm\" }", "thickness = \"1.2 nm\", interface_asymmetry = 0.3 }"),
-        ("channel.end=reflecting", "end = \"semi-infinite\"", "end = \"reflecting\""),
+        (
+            "channel.thickness=40 nm",
+            "thickness = \"2 µm\"",
+            "thickness = \"40 nm\"",
+        ),
+        (
+            "channel.thickness=\"40 nm\"",
+            "thickness = \"2 µm\"",
+            "thickness = \"40 nm\"",
+        ),
+        (
+            "temperature = 77 K",
+            "temperature = \"300 K\"",
+            "temperature = \"77 K\"",
+        ),
+        (
+            "injector.ferromagnet.thickness=2 nm",
+            "thickness = \"40 nm\" }\n# resistance_area",
+            "thickness = \"2 nm\" }\n# resistance_area",
+        ),
+        (
+            "injector.barrier.resistance_area=2 kΩ µm²",
+            "resistance_area = \"100 Ω µm²\", thickness",
+            "resistance_area = \"2 kΩ µm²\", thickness",
+        ),
+        (
+            "goal.injected_polarization=>= 30 %",
+            "injected_polarization = \">= 10 %\"",
+            "injected_polarization = \">= 30 %\"",
+        ),
+        (
+            "injector.barrier.interface_asymmetry=0.3",
+            "thickness = \"1.2 nm\" }",
+            "thickness = \"1.2 nm\", interface_asymmetry = 0.3 }",
+        ),
+        (
+            "channel.end=reflecting",
+            "end = \"semi-infinite\"",
+            "end = \"reflecting\"",
+        ),
     ];
     let plain = without_places(json(&["assess", "-"], &text));
     let mut changed = 0;
@@ -316,10 +453,31 @@ fn a_setting_answers_as_the_edited_file_does() {
 #[test]
 fn several_settings_are_all_laid_over_and_the_last_one_wins() {
     let text = template();
-    let both = ["assess", "-", "--set", "channel.thickness=40 nm", "--set", "temperature=77 K"];
-    let turned = ["assess", "-", "--set", "temperature=77 K", "--set", "channel.thickness=40 nm"];
+    let both = [
+        "assess",
+        "-",
+        "--set",
+        "channel.thickness=40 nm",
+        "--set",
+        "temperature=77 K",
+    ];
+    let turned = [
+        "assess",
+        "-",
+        "--set",
+        "temperature=77 K",
+        "--set",
+        "channel.thickness=40 nm",
+    ];
     assert_eq!(json(&both, &text), json(&turned, &text));
-    let twice = ["assess", "-", "--set", "channel.thickness=1 nm", "--set", "channel.thickness=40 nm"];
+    let twice = [
+        "assess",
+        "-",
+        "--set",
+        "channel.thickness=1 nm",
+        "--set",
+        "channel.thickness=40 nm",
+    ];
     let once = ["assess", "-", "--set", "channel.thickness=40 nm"];
     assert_eq!(json(&twice, &text), json(&once, &text));
 }
@@ -331,16 +489,30 @@ fn standard_input_answers_as_the_file_does() {
     for text in [template(), with_detector()] {
         fs::write(folder.join("first.toml"), &text).unwrap();
         for more in [&[][..], &["--full"], &["--format", "json"]] {
-            let file = run_at(&folder, "100", &[&["assess", "first.toml"], more].concat(), "");
+            let file = run_at(
+                &folder,
+                "100",
+                &[&["assess", "first.toml"], more].concat(),
+                "",
+            );
             let stdin = run_at(&folder, "100", &[&["assess", "-"], more].concat(), &text);
-            assert_eq!((file.code, stdin.code), (Some(0), Some(0)), "{}{}", file.stderr, stdin.stderr);
+            assert_eq!(
+                (file.code, stdin.code),
+                (Some(0), Some(0)),
+                "{}{}",
+                file.stderr,
+                stdin.stderr
+            );
             if more.contains(&"--full") {
                 // Names of different length wrap differently.
                 let words = |s: &str| s.split_whitespace().collect::<Vec<_>>().join(" ");
                 let named = words(&stdin.stdout).replace("standard input", "first.toml");
                 assert_eq!(named.len(), words(&file.stdout).len());
             } else {
-                assert_eq!(stdin.stdout.replace("standard input", "first.toml"), file.stdout);
+                assert_eq!(
+                    stdin.stdout.replace("standard input", "first.toml"),
+                    file.stdout
+                );
             }
             compared += 1;
         }
@@ -352,29 +524,60 @@ fn standard_input_answers_as_the_file_does() {
 fn strict_fails_when_and_only_when_a_goal_is_not_met() {
     let text = template();
     let mut seen = [0, 0];
-    for goal in [">= 1 %", ">= 10 %", ">= 99 %", "<= 1 %", "<= 99 %", "1 .. 2 %", "0 .. 100 %"] {
+    for goal in [
+        ">= 1 %",
+        ">= 10 %",
+        ">= 99 %",
+        "<= 1 %",
+        "<= 99 %",
+        "1 .. 2 %",
+        "0 .. 100 %",
+    ] {
         let setting = format!("goal.injected_polarization={goal}");
-        let met = json(&["assess", "-", "--set", &setting], &text)["goals_met"].as_bool().unwrap();
+        let met = json(&["assess", "-", "--set", &setting], &text)["goals_met"]
+            .as_bool()
+            .unwrap();
         for format in [&[][..], &["--format", "json"], &["--full"]] {
-            let plain = run_at(here(), "80", &[&["assess", "-", "--set", &setting], format].concat(), &text);
-            let strict = run_at(here(), "80", &[&["assess", "-", "--strict", "--set", &setting], format].concat(), &text);
+            let plain = run_at(
+                here(),
+                "80",
+                &[&["assess", "-", "--set", &setting], format].concat(),
+                &text,
+            );
+            let strict = run_at(
+                here(),
+                "80",
+                &[&["assess", "-", "--strict", "--set", &setting], format].concat(),
+                &text,
+            );
             assert_eq!(plain.code, Some(0), "{goal}");
             assert_eq!(strict.code, Some(i32::from(!met)), "{goal}: met: {met}");
-            assert_eq!(plain.stdout, strict.stdout, "{goal}: --strict changes the answer");
+            assert_eq!(
+                plain.stdout, strict.stdout,
+                "{goal}: --strict changes the answer"
+            );
             assert!(strict.stderr.is_empty(), "{goal}: {}", strict.stderr);
         }
         seen[usize::from(met)] += 1;
     }
     assert_eq!(seen, [3, 4]);
     let without_goal = text.replace("injected_polarization = ", "# ");
-    assert_eq!(run_at(here(), "80", &["assess", "-", "--strict"], &without_goal).code, Some(0));
+    assert_eq!(
+        run_at(here(), "80", &["assess", "-", "--strict"], &without_goal).code,
+        Some(0)
+    );
 }
 
 #[test]
 fn a_reader_that_goes_away_is_no_failure() {
     let folder = folder("pipe");
     fs::write(folder.join("first.toml"), template()).unwrap();
-    let vary = ["--vary", "channel.thickness=10 .. 3000 nm", "--points", "20000"];
+    let vary = [
+        "--vary",
+        "channel.thickness=10 .. 3000 nm",
+        "--points",
+        "20000",
+    ];
     let cases: &[&[&str]] = &[
         &[&["assess", "first.toml", "--format", "csv"], &vary[..]].concat(),
         &[&["assess", "first.toml", "--format", "json"], &vary[..]].concat(),
@@ -395,8 +598,17 @@ fn a_reader_that_goes_away_is_no_failure() {
         out.read_exact(&mut first).unwrap();
         drop(out);
         let output = child.wait_with_output().unwrap();
-        assert_eq!(output.status.code(), Some(0), "{arguments:?}: {}", output.status);
-        assert_eq!(String::from_utf8(output.stderr).unwrap(), "", "{arguments:?}");
+        assert_eq!(
+            output.status.code(),
+            Some(0),
+            "{arguments:?}: {}",
+            output.status
+        );
+        assert_eq!(
+            String::from_utf8(output.stderr).unwrap(),
+            "",
+            "{arguments:?}"
+        );
     }
 }
 
@@ -424,15 +636,24 @@ fn the_library_can_be_listed_shown_and_checked() {
 fn help_and_version_are_answers() {
     let mut seen = 0;
     for arguments in [
-        &["--help"][..], &["--version"], &["assess", "--help"], &["materials", "--help"], &["new", "--help"],
-        &["findings", "--help"], &["help", "assess"], &["materials", "show", "--help"],
+        &["--help"][..],
+        &["--version"],
+        &["assess", "--help"],
+        &["materials", "--help"],
+        &["new", "--help"],
+        &["findings", "--help"],
+        &["help", "assess"],
+        &["materials", "show", "--help"],
     ] {
         let text = answer(arguments, "");
         assert!(!text.contains('\u{1b}'), "{arguments:?}");
         seen += 1;
     }
     assert_eq!(seen, 8);
-    assert_eq!(answer(&["--version"], ""), format!("injectance {}\n", env!("CARGO_PKG_VERSION")));
+    assert_eq!(
+        answer(&["--version"], ""),
+        format!("injectance {}\n", env!("CARGO_PKG_VERSION"))
+    );
     let bare = run_at(here(), "80", &[], "");
     assert_eq!(bare.code, Some(0));
     assert!(bare.stdout.contains("assess") && bare.stderr.is_empty());
@@ -442,15 +663,31 @@ fn help_and_version_are_answers() {
 fn a_record_of_the_user_takes_the_place_of_the_shipped_one_and_that_is_told() {
     let folder = folder("records");
     fs::write(folder.join("first.toml"), template()).unwrap();
-    let run = |arguments: &[&str]| run_at(&folder, "100", &[&["assess", "first.toml"], arguments].concat(), "");
+    let run = |arguments: &[&str]| {
+        run_at(
+            &folder,
+            "100",
+            &[&["assess", "first.toml"], arguments].concat(),
+            "",
+        )
+    };
     let parsed = |arguments: &[&str]| -> Value {
         serde_json::from_str(&run(&[arguments, &["--format", "json"]].concat()).stdout).unwrap()
     };
     let before = parsed(&[]);
     let resistivity = |document: &Value| -> Value {
-        document["inputs"].as_array().unwrap().iter().find(|i| i["name"] == "channel.resistivity").unwrap().clone()
+        document["inputs"]
+            .as_array()
+            .unwrap()
+            .iter()
+            .find(|i| i["name"] == "channel.resistivity")
+            .unwrap()
+            .clone()
     };
-    let id = resistivity(&before)["origin"]["id"].as_str().unwrap().to_owned();
+    let id = resistivity(&before)["origin"]["id"]
+        .as_str()
+        .unwrap()
+        .to_owned();
     fs::create_dir(folder.join("own")).unwrap();
     let record = format!(
         r#"format = 1
@@ -475,8 +712,14 @@ why = "The wafer in use."
     let after = parsed(&["--materials", "own"]);
     let input = resistivity(&after);
     assert_eq!(input["origin"]["id"], id.as_str());
-    assert_eq!(input["value"]["value"].as_f64().unwrap().to_bits(), 4e-5_f64.to_bits());
-    let (old, new) = (number(&before, "injected_polarization"), number(&after, "injected_polarization"));
+    assert_eq!(
+        input["value"]["value"].as_f64().unwrap().to_bits(),
+        4e-5_f64.to_bits()
+    );
+    let (old, new) = (
+        number(&before, "injected_polarization"),
+        number(&after, "injected_polarization"),
+    );
     assert!((old - new).abs() > 1e-3, "{old} and {new}");
     let told = |document: &Value| -> Vec<String> {
         let findings = document["findings"].as_array().unwrap().iter();
@@ -488,17 +731,32 @@ why = "The wafer in use."
     assert!(told(&before).is_empty());
     let told = told(&after);
     assert!(told.len() == 1 && told[0].contains(&id), "{told:?}");
-    for more in [&["--materials", "own"][..], &["--materials", "own", "--full"]] {
+    for more in [
+        &["--materials", "own"][..],
+        &["--materials", "own", "--full"],
+    ] {
         let text = run(more).stdout;
         assert!(text.contains(&id), "{more:?}: {text}");
     }
     // The same number stated in the design gives the same answer: a record is no other road.
     let stated = parsed(&["--set", "channel.resistivity=4 ± 0.2 mΩ cm"]);
-    assert_eq!(number(&stated, "injected_polarization").to_bits(), new.to_bits());
+    assert_eq!(
+        number(&stated, "injected_polarization").to_bits(),
+        new.to_bits()
+    );
     let check = run_at(&folder, "100", &["materials", "check", "own"], "");
     assert_eq!(check.code, Some(0), "{}", check.stderr);
-    assert!(check.stdout.starts_with("1 files") || check.stdout.starts_with("1 file"), "{}", check.stdout);
-    let shown = run_at(&folder, "100", &["materials", "show", "silicon", "--materials", "own"], "");
+    assert!(
+        check.stdout.starts_with("1 files") || check.stdout.starts_with("1 file"),
+        "{}",
+        check.stdout
+    );
+    let shown = run_at(
+        &folder,
+        "100",
+        &["materials", "show", "silicon", "--materials", "own"],
+        "",
+    );
     assert_eq!(shown.code, Some(0), "{}", shown.stderr);
     assert!(shown.stdout.contains(&id));
 }

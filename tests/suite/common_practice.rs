@@ -9,7 +9,9 @@ use injectance::models::ladder::State;
 use injectance::numerics::root::bracketed_root;
 use injectance::quantities::spread::{Side, Spread};
 
-use crate::bare::{Fixed, Free, injected, layer, polarization, stack, thick_ferromagnet, thick_normal};
+use crate::bare::{
+    Fixed, Free, injected, layer, polarization, stack, thick_ferromagnet, thick_normal,
+};
 use crate::compare::close;
 
 /// The transport pairs of the common ferromagnets, by material.
@@ -40,7 +42,11 @@ fn bulk_asymmetry_of_common_ferromagnets_is_around_one_half() {
     for (id, records) in pairs() {
         for record in records {
             let beta = record.bulk_asymmetry.si;
-            assert!((0.1..=0.8).contains(&beta), "{id}: {beta} ({})", record.common.id);
+            assert!(
+                (0.1..=0.8).contains(&beta),
+                "{id}: {beta} ({})",
+                record.common.id
+            );
             all.push(beta);
         }
     }
@@ -56,7 +62,11 @@ fn spins_live_about_ten_nanometres_in_a_common_ferromagnet() {
     for (id, records) in pairs() {
         for record in records {
             let lambda = record.spin_diffusion_length.si;
-            assert!((1e-9..=60e-9).contains(&lambda), "{id}: {lambda} ({})", record.common.id);
+            assert!(
+                (1e-9..=60e-9).contains(&lambda),
+                "{id}: {lambda} ({})",
+                record.common.id
+            );
             all.push(lambda);
         }
     }
@@ -98,7 +108,11 @@ fn two_contacts(beta: f64, x: f64) -> f64 {
 fn one_contact(beta: f64, x: f64) -> f64 {
     let r_n = 4e-9;
     let r_f = x * r_n / ((1.0 - beta) * (1.0 + beta));
-    injected(&stack(thick_ferromagnet(r_f, beta, Fixed), &[], thick_normal(r_n)))
+    injected(&stack(
+        thick_ferromagnet(r_f, beta, Fixed),
+        &[],
+        thick_normal(r_n),
+    ))
 }
 
 #[test]

@@ -38,7 +38,11 @@ pub fn within_at(what: &str, got: f64, want: f64, scale: f64, rel: f64) {
 /// |got − want|/scale; 0 where both agree exactly, whatever the scale. NaN if anything is.
 pub fn deviation(got: f64, want: f64, scale: f64) -> f64 {
     let off = (got - want).abs();
-    if off <= 0.0 && scale >= 0.0 { 0.0 } else { off / scale }
+    if off <= 0.0 && scale >= 0.0 {
+        0.0
+    } else {
+        off / scale
+    }
 }
 
 #[cfg(test)]

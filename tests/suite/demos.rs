@@ -1,5 +1,7 @@
 //! Whole answers of the demo designs, read by a person before a snapshot is accepted.
 
+#![allow(clippy::unwrap_used)]
+
 use std::path::{Path, PathBuf};
 
 use assert_cmd::Command;
@@ -25,7 +27,11 @@ fn answer(design: &Path, columns: usize, options: &[&str]) -> String {
         .args(options)
         .output()
         .unwrap();
-    assert!(output.status.success(), "{}", String::from_utf8_lossy(&output.stderr));
+    assert!(
+        output.status.success(),
+        "{}",
+        String::from_utf8_lossy(&output.stderr)
+    );
     assert!(output.stderr.is_empty());
     String::from_utf8(output.stdout).unwrap()
 }
@@ -41,7 +47,10 @@ fn there_are_four_and_each_says_it_is_invented() {
     for design in all {
         let text = std::fs::read_to_string(&design).unwrap();
         let first = text.lines().next().unwrap();
-        assert!(first.starts_with("# Invented scenario:") && first.contains("invented"), "{first}");
+        assert!(
+            first.starts_with("# Invented scenario:") && first.contains("invented"),
+            "{first}"
+        );
     }
 }
 
@@ -50,7 +59,12 @@ fn short_answers() {
     for design in demos() {
         for columns in [80, 140] {
             let text = answer(&design, columns, &[]);
-            assert!(text.lines().count() <= 24, "{}: {} lines", design.display(), text.lines().count());
+            assert!(
+                text.lines().count() <= 24,
+                "{}: {} lines",
+                design.display(),
+                text.lines().count()
+            );
             assert!(text.lines().all(|l| l.chars().count() <= columns), "{text}");
             insta::assert_snapshot!(name(&design, &columns.to_string()), text);
         }
@@ -62,7 +76,10 @@ fn full_answers() {
     for design in demos() {
         for columns in [80, 140] {
             let text = answer(&design, columns, &["--full"]);
-            let long: Vec<&str> = text.lines().filter(|l| l.chars().count() > columns).collect();
+            let long: Vec<&str> = text
+                .lines()
+                .filter(|l| l.chars().count() > columns)
+                .collect();
             assert!(long.is_empty(), "{}: {long:#?}", design.display());
             if columns == 80 {
                 insta::assert_snapshot!(name(&design, "full"), text);
@@ -94,8 +111,18 @@ fn the_demos_answer_their_questions() {
     let valve = json("metal-spin-valve.toml", &[]);
     let kept = json(
         "metal-spin-valve.toml",
-        &["--set", "stack.2.interface.spin_memory_loss=0", "--set", "stack.4.interface.spin_memory_loss=0"],
+        &[
+            "--set",
+            "stack.2.interface.spin_memory_loss=0",
+            "--set",
+            "stack.4.interface.spin_memory_loss=0",
+        ],
     );
     let change = |v: &serde_json::Value| v["resistance_area_change"]["value"].as_f64().unwrap();
-    assert!(change(&kept) > 1.05 * change(&valve), "{} {}", change(&kept), change(&valve));
+    assert!(
+        change(&kept) > 1.05 * change(&valve),
+        "{} {}",
+        change(&kept),
+        change(&valve)
+    );
 }

@@ -1,5 +1,7 @@
 //! Does the shipped library keep its own rules?
 
+#![allow(clippy::unwrap_used)]
+
 use injectance::documents::reader::Faults;
 use injectance::materials::check::check;
 use injectance::materials::library::{Library, Role, commons_of_interface, commons_of_material};
@@ -12,9 +14,14 @@ const LEAST_INTERFACES: usize = 22;
 const LEAST_RECORDS: usize = 300;
 
 fn files() -> Vec<(String, String)> {
-    let mut files: Vec<(String, String)> =
-        Library::shipped_files().iter().map(|f| (f.path.to_owned(), f.text.to_owned())).collect();
-    files.push(("materials/references.bib".to_owned(), Library::shipped_references().to_owned()));
+    let mut files: Vec<(String, String)> = Library::shipped_files()
+        .iter()
+        .map(|f| (f.path.to_owned(), f.text.to_owned()))
+        .collect();
+    files.push((
+        "materials/references.bib".to_owned(),
+        Library::shipped_references().to_owned(),
+    ));
     files
 }
 
@@ -36,13 +43,25 @@ fn every_reference_is_used() {
     let mut used = std::collections::BTreeSet::new();
     for listed in library.listed() {
         if let Some(m) = library.material(&listed.id, &faults) {
-            used.extend(commons_of_material(&m).iter().filter_map(|c| c.source.clone()));
+            used.extend(
+                commons_of_material(&m)
+                    .iter()
+                    .filter_map(|c| c.source.clone()),
+            );
         }
         if let Some(i) = library.interface(&listed.id, &faults) {
-            used.extend(commons_of_interface(&i).iter().filter_map(|c| c.source.clone()));
+            used.extend(
+                commons_of_interface(&i)
+                    .iter()
+                    .filter_map(|c| c.source.clone()),
+            );
         }
     }
-    let unused: Vec<&str> = library.references().keys().filter(|k| !used.contains(*k)).collect();
+    let unused: Vec<&str> = library
+        .references()
+        .keys()
+        .filter(|k| !used.contains(*k))
+        .collect();
     assert!(unused.is_empty(), "{unused:?}");
     assert!(used.len() >= 100, "{}", used.len());
 }
@@ -60,15 +79,30 @@ fn the_index_agrees_with_the_files() {
                 assert_eq!((m.id.as_str(), m.name.as_str()), (file.id, file.name));
                 assert_eq!(m.class.word(), class);
                 assert_eq!(m.aliases, aliases.to_vec());
-                assert!(file.path.ends_with(&format!("/{}.toml", file.id)), "{}", file.path);
+                assert!(
+                    file.path.ends_with(&format!("/{}.toml", file.id)),
+                    "{}",
+                    file.path
+                );
                 compared += 1;
             }
-            Role::Interface { ferromagnet, barrier, channel } => {
+            Role::Interface {
+                ferromagnet,
+                barrier,
+                channel,
+            } => {
                 let i = library.interface(file.id, &faults).unwrap();
                 assert_eq!((i.id.as_str(), i.name.as_str()), (file.id, file.name));
                 assert_eq!(i.ferromagnet, ferromagnet);
-                assert_eq!((i.barrier.as_deref(), i.channel.as_deref()), (barrier, channel));
-                assert!(file.path.ends_with(&format!("/{}.toml", file.id)), "{}", file.path);
+                assert_eq!(
+                    (i.barrier.as_deref(), i.channel.as_deref()),
+                    (barrier, channel)
+                );
+                assert!(
+                    file.path.ends_with(&format!("/{}.toml", file.id)),
+                    "{}",
+                    file.path
+                );
                 compared += 1;
             }
             Role::Priors => {}
@@ -98,12 +132,22 @@ fn no_record_is_exact_and_each_unknown_has_a_prior() {
     let library = Library::shipped();
     let mut looked_at = 0;
     for listed in library.listed() {
-        let Some(m) = library.material(&listed.id, &faults) else { continue };
+        let Some(m) = library.material(&listed.id, &faults) else {
+            continue;
+        };
         for v in &m.values {
             looked_at += 1;
-            assert!(!matches!(v.reading.spread, Spread::Exact), "{}", v.common.id);
+            assert!(
+                !matches!(v.reading.spread, Spread::Exact),
+                "{}",
+                v.common.id
+            );
             if matches!(v.reading.spread, Spread::Unknown) && v.property.name != "monolayer" {
-                assert!(library.prior(v.property.name).is_some(), "no prior for {}", v.property.name);
+                assert!(
+                    library.prior(v.property.name).is_some(),
+                    "no prior for {}",
+                    v.property.name
+                );
             }
         }
     }
@@ -117,7 +161,9 @@ fn only_fits_give_an_interface_asymmetry() {
     let library = Library::shipped();
     let mut gammas = 0;
     for listed in library.listed() {
-        let Some(i) = library.interface(&listed.id, &faults) else { continue };
+        let Some(i) = library.interface(&listed.id, &faults) else {
+            continue;
+        };
         for c in &i.contacts {
             if c.interface_asymmetry.is_some() {
                 gammas += 1;
@@ -142,10 +188,24 @@ fn silicon_resistivities_follow_from_their_law() {
     let faults = Faults::default();
     let library = Library::shipped();
     let silicon = library.material("silicon", &faults).unwrap();
-    let law = silicon.laws.iter().find(|l| l.property.name == "resistivity").unwrap();
+    let law = silicon
+        .laws
+        .iter()
+        .find(|l| l.property.name == "resistivity")
+        .unwrap();
     let c = |name: &str| -> f64 {
-        let text = &law.coefficients.iter().find(|(k, _)| k.eq_ignore_ascii_case(name)).unwrap().1;
-        text.replace('\u{2212}', "-").split(' ').next().unwrap().parse().unwrap()
+        let text = &law
+            .coefficients
+            .iter()
+            .find(|(k, _)| k.eq_ignore_ascii_case(name))
+            .unwrap()
+            .1;
+        text.replace('\u{2212}', "-")
+            .split(' ')
+            .next()
+            .unwrap()
+            .parse()
+            .unwrap()
     };
     let mut checked = 0;
     for record in silicon.values.iter().filter(|v| {
@@ -159,7 +219,11 @@ fn silicon_resistivities_follow_from_their_law() {
             / (1.0 + c("d1") * y + c("d2") * y * y + c("d3") * y.powi(3));
         let rho = 6.242e18 / n * 10.0_f64.powf(z) * 1e-2;
         // Four digits are written in the record.
-        assert!((record.reading.si / rho - 1.0).abs() < 5e-4, "{}: {rho}", record.common.id);
+        assert!(
+            (record.reading.si / rho - 1.0).abs() < 5e-4,
+            "{}: {rho}",
+            record.common.id
+        );
         checked += 1;
     }
     assert_eq!(checked, 3);

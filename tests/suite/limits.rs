@@ -12,8 +12,8 @@ use proptest::prelude::*;
 use proptest::test_runner::RngSeed;
 
 use crate::bare::{
-    Fixed, FixedOpposite, Free, accumulations, change, currents, injected, interface, layer, medium,
-    normal, resistance, single_contact, stack, thick_ferromagnet, thick_normal,
+    Fixed, FixedOpposite, Free, accumulations, change, currents, injected, interface, layer,
+    medium, normal, resistance, single_contact, stack, thick_ferromagnet, thick_normal,
 };
 use crate::compare::{close, close_at, within, within_at};
 
@@ -39,27 +39,46 @@ impl Plan {
         let end = |e: &End| match e {
             End::SemiInfinite(l) => {
                 let (asymmetry, magnetization) = f((l.asymmetry.si(), l.magnetization));
-                End::SemiInfinite(Layer { asymmetry: BulkAsymmetry::from_si(asymmetry), magnetization, ..*l })
+                End::SemiInfinite(Layer {
+                    asymmetry: BulkAsymmetry::from_si(asymmetry),
+                    magnetization,
+                    ..*l
+                })
             }
             other => *other,
         };
         let elements = self.elements.iter().map(|e| match e {
             Element::Layer(l) => {
                 let (asymmetry, magnetization) = f((l.asymmetry.si(), l.magnetization));
-                Element::Layer(Layer { asymmetry: BulkAsymmetry::from_si(asymmetry), magnetization, ..*l })
+                Element::Layer(Layer {
+                    asymmetry: BulkAsymmetry::from_si(asymmetry),
+                    magnetization,
+                    ..*l
+                })
             }
             Element::Interface(i) => {
                 let (asymmetry, magnetization) = f((i.asymmetry.si(), i.magnetization));
                 let mut i = *i;
-                (i.asymmetry, i.magnetization) = (InterfaceAsymmetry::from_si(asymmetry), magnetization);
+                (i.asymmetry, i.magnetization) =
+                    (InterfaceAsymmetry::from_si(asymmetry), magnetization);
                 Element::Interface(i)
             }
         });
-        Self { left: end(&self.left), elements: elements.collect(), right: end(&self.right) }
+        Self {
+            left: end(&self.left),
+            elements: elements.collect(),
+            right: end(&self.right),
+        }
     }
 
     fn largest_asymmetry(&self) -> f64 {
-        let of_end = |e: &End| if let End::SemiInfinite(l) = e { l.asymmetry.si().abs() } else { 0.0 };
+        let of_end = |e: &End| {
+            if let End::SemiInfinite(l) = e {
+                l.asymmetry.si().abs()
+            } else {
+                0.0
+            }
+        };
         self.elements
             .iter()
             .map(|e| match e {
@@ -108,12 +127,18 @@ fn plan() -> impl Strategy<Value = Plan> {
         prop_oneof![any_layer().prop_map(Element::Layer), any_interface()],
         0..6,
     );
-    (any_end(), any_layer(), inner, any_layer(), any_end()).prop_map(|(left, first, inner, last, right)| {
-        let mut elements = vec![Element::Layer(first)];
-        elements.extend(inner);
-        elements.push(Element::Layer(last));
-        Plan { left, elements, right }
-    })
+    (any_end(), any_layer(), inner, any_layer(), any_end()).prop_map(
+        |(left, first, inner, last, right)| {
+            let mut elements = vec![Element::Layer(first)];
+            elements.extend(inner);
+            elements.push(Element::Layer(last));
+            Plan {
+                left,
+                elements,
+                right,
+            }
+        },
+    )
 }
 
 fn config() -> ProptestConfig {
@@ -458,7 +483,10 @@ fn a_thick_magnet_polarizes_to_its_own_asymmetry() {
     for t in [40.0, 300.0, 1e3, 1e6] {
         let device = stack(
             End::SpinSink,
-            &[layer(1e-7, 0.46, 6e-8, t * 6e-8, Fixed), layer(1e-7, 0.46, 6e-8, t * 6e-8, Fixed)],
+            &[
+                layer(1e-7, 0.46, 6e-8, t * 6e-8, Fixed),
+                layer(1e-7, 0.46, 6e-8, t * 6e-8, Fixed),
+            ],
             thick_normal(4e-9),
         );
         let p = currents(&device.solve(State::Parallel));
@@ -472,24 +500,49 @@ fn a_thin_magnet_injects_with_the_square_of_its_thickness() {
     // Θ ≪ 1: corrections Θ² and r_NΘ/r_F, below 1e-11 here. An error of 1e-16 in the thickness of a sum would show.
     for theta in [1e-6, 1e-7, 1e-9] {
         let r_f = 1e-7 * 6e-8 / ((1.0 - 0.5) * (1.0 + 0.5));
-        let device = stack(End::Reflecting, &[layer(1e-7, 0.5, 6e-8, theta * 6e-8, Fixed)], thick_normal(r_f * 1e-6));
+        let device = stack(
+            End::Reflecting,
+            &[layer(1e-7, 0.5, 6e-8, theta * 6e-8, Fixed)],
+            thick_normal(r_f * 1e-6),
+        );
         close(injected(&device), 0.25 * theta * theta, 3e-12);
     }
 }
 
 #[test]
 fn exact_limits_of_the_interface() {
-    let bare = stack(thick_ferromagnet(4.5e-15, 0.46, Fixed), &[], thick_normal(4e-9));
+    let bare = stack(
+        thick_ferromagnet(4.5e-15, 0.46, Fixed),
+        &[],
+        thick_normal(4e-9),
+    );
     for gamma in [-0.9, 0.0, 0.5] {
         let with = single_contact(0.46, 4.5e-15, 4e-9, gamma, 0.0);
         close(injected(&with), injected(&bare), 0.0);
-        close(resistance(&with, State::Parallel), resistance(&bare, State::Parallel), 0.0);
-        within(injected(&single_contact(0.46, 4.5e-15, 4e-9, gamma, 1e10)), gamma, 1.0, 1e-15);
+        close(
+            resistance(&with, State::Parallel),
+            resistance(&bare, State::Parallel),
+            0.0,
+        );
+        within(
+            injected(&single_contact(0.46, 4.5e-15, 4e-9, gamma, 1e10)),
+            gamma,
+            1.0,
+            1e-15,
+        );
     }
     // A channel without end carries nothing from one magnet to the other, one of no length everything.
     let valve = |t: f64| {
-        let elements = [interface(4e-9, 0.5, 0.0, Fixed), normal(4e-9, 2e-6, t), interface(4e-9, 0.5, 0.0, Free)];
-        stack(thick_ferromagnet(4.5e-15, 0.46, Fixed), &elements, thick_ferromagnet(4.5e-15, 0.46, Free))
+        let elements = [
+            interface(4e-9, 0.5, 0.0, Fixed),
+            normal(4e-9, 2e-6, t),
+            interface(4e-9, 0.5, 0.0, Free),
+        ];
+        stack(
+            thick_ferromagnet(4.5e-15, 0.46, Fixed),
+            &elements,
+            thick_ferromagnet(4.5e-15, 0.46, Free),
+        )
     };
     close(change(&valve(f64::INFINITY)), 0.0, 0.0);
     // Four sources in series: ΔRA = 4a²/2R.
@@ -505,12 +558,27 @@ fn resistances_that_alternate_over_24_decades_do_not_overflow() {
     let pair = [normal(large, 1e-6, 1.0), normal(small, 1e-6, 1.0)];
     for pairs in [1, 12, 100] {
         let elements: Vec<Element> = (0..pairs).flat_map(|_| pair).collect();
-        let device = stack(thick_ferromagnet(r_f, beta, Fixed), &elements, End::Reflecting);
+        let device = stack(
+            thick_ferromagnet(r_f, beta, Fixed),
+            &elements,
+            End::Reflecting,
+        );
         let solution = device.solve(State::Parallel);
-        assert!(solution.faces.iter().flat_map(number).all(f64::is_finite), "{pairs} pairs");
-        close(currents(&solution)[0], beta * r_f / (r_f + large * 1.0_f64.tanh()), 1e-13);
+        assert!(
+            solution.faces.iter().flat_map(number).all(f64::is_finite),
+            "{pairs} pairs"
+        );
+        close(
+            currents(&solution)[0],
+            beta * r_f / (r_f + large * 1.0_f64.tanh()),
+            1e-13,
+        );
         let image: Vec<Element> = elements.iter().rev().copied().collect();
         let image = stack(End::Reflecting, &image, thick_ferromagnet(r_f, beta, Fixed));
-        close(injected(&image), beta * r_f / (r_f + large * 1.0_f64.tanh()), 1e-13);
+        close(
+            injected(&image),
+            beta * r_f / (r_f + large * 1.0_f64.tanh()),
+            1e-13,
+        );
     }
 }

@@ -54,7 +54,10 @@ fn check_numbers(path: &str, value: &serde_json::Value, seen: &mut usize) {
                 assert!(number.is_none_or(f64::is_finite), "{path}: {value}");
             }
             if map.contains_key("intervals") {
-                assert_eq!(map["best"]["value"]["status"], "ok", "{path}: a window without a best value");
+                assert_eq!(
+                    map["best"]["value"]["status"], "ok",
+                    "{path}: a window without a best value"
+                );
             }
             for (key, inner) in map {
                 check_numbers(&format!("{path}.{key}"), inner, seen);
@@ -71,7 +74,10 @@ fn check_numbers(path: &str, value: &serde_json::Value, seen: &mut usize) {
 fn check_text(lines: &[String]) {
     for line in lines {
         for word in line.split(|c: char| !c.is_alphanumeric()) {
-            assert!(!matches!(word, "NaN" | "nan" | "inf" | "Infinity"), "{line}");
+            assert!(
+                !matches!(word, "NaN" | "nan" | "inf" | "Infinity"),
+                "{line}"
+            );
         }
     }
 }
@@ -90,7 +96,9 @@ fn through(root: &Node, own_words: bool) -> End {
             return End::Refused;
         };
         // A stack may still have no solution in floating-point numbers; that is told, too.
-        let Ok(answer) = assess(&design, device, library) else { return End::Refused };
+        let Ok(answer) = assess(&design, device, library) else {
+            return End::Refused;
+        };
         for width in [60, 140] {
             let (short, long) = (summary::summary(&answer, width), full::full(&answer, width));
             assert!(!short.is_empty() && long.len() > short.len());
@@ -123,7 +131,10 @@ fn design(text: &str, own_words: bool) -> End {
 fn records(text: &str) -> usize {
     let faults = Faults::default();
     LIBRARY.with(|library| {
-        let files = [("a.toml".to_owned(), text.to_owned()), ("b.bib".to_owned(), text.to_owned())];
+        let files = [
+            ("a.toml".to_owned(), text.to_owned()),
+            ("b.bib".to_owned(), text.to_owned()),
+        ];
         check(&files, Some(library), true, &faults);
         check(&files, None, false, &faults);
     });
@@ -134,8 +145,16 @@ fn records(text: &str) -> usize {
 
 /// Runs cases from a fixed seed, so that a run tells the same as the run before.
 fn cases<S: Strategy>(count: u32, seed: u8, strategy: &S, test: impl Fn(S::Value)) {
-    let config = Config { cases: count, failure_persistence: None, max_shrink_iters: 2000, ..Config::default() };
-    let mut runner = TestRunner::new_with_rng(config, TestRng::from_seed(RngAlgorithm::ChaCha, &[seed; 32]));
+    let config = Config {
+        cases: count,
+        failure_persistence: None,
+        max_shrink_iters: 2000,
+        ..Config::default()
+    };
+    let mut runner = TestRunner::new_with_rng(
+        config,
+        TestRng::from_seed(RngAlgorithm::ChaCha, &[seed; 32]),
+    );
     let run = Cell::new(0);
     runner
         .run(strategy, |value| {
@@ -151,10 +170,37 @@ fn cases<S: Strategy>(count: u32, seed: u8, strategy: &S, test: impl Fn(S::Value
 
 fn words() -> impl Strategy<Value = String> {
     let known = vec![
-        "iron", "cobalt", "copper", "silicon", "magnesia", "gallium-arsenide", "Fe", "MgO", "unobtainium", "",
-        "vertical", "lateral", "semi-infinite", "spin sink", "reflecting", "fed in plane", "free", "fixed",
-        "fixed antiparallel", "left", "right", "n", "p", "phosphorus", "parallel", "antiparallel", ">= 10 %",
-        "<= 1 Ω µm²", "1 .. 5 %", ">=", "own wafer",
+        "iron",
+        "cobalt",
+        "copper",
+        "silicon",
+        "magnesia",
+        "gallium-arsenide",
+        "Fe",
+        "MgO",
+        "unobtainium",
+        "",
+        "vertical",
+        "lateral",
+        "semi-infinite",
+        "spin sink",
+        "reflecting",
+        "fed in plane",
+        "free",
+        "fixed",
+        "fixed antiparallel",
+        "left",
+        "right",
+        "n",
+        "p",
+        "phosphorus",
+        "parallel",
+        "antiparallel",
+        ">= 10 %",
+        "<= 1 Ω µm²",
+        "1 .. 5 %",
+        ">=",
+        "own wafer",
     ];
     prop_oneof![
         6 => prop::sample::select(known).prop_map(str::to_owned),
@@ -164,9 +210,40 @@ fn words() -> impl Strategy<Value = String> {
 
 fn numbers() -> impl Strategy<Value = String> {
     let extreme = vec![
-        "0", "-0", "1", "-1", "1e-300", "1e300", "-1e300", "4.9e-324", "1.7976931348623157e308", "1e999", "1e-999",
-        "0.999999999999999", "0.9999999999999999999", "NaN", "nan", "inf", "-inf", "∞", "300", "40", "0.3", "1e4",
-        "9e99999999999999999999", "2×10⁴", "2·10^4", "1,5", "0x10", "1_000", "+3", "--3", ".5", "5.", "e5", "−7",
+        "0",
+        "-0",
+        "1",
+        "-1",
+        "1e-300",
+        "1e300",
+        "-1e300",
+        "4.9e-324",
+        "1.7976931348623157e308",
+        "1e999",
+        "1e-999",
+        "0.999999999999999",
+        "0.9999999999999999999",
+        "NaN",
+        "nan",
+        "inf",
+        "-inf",
+        "∞",
+        "300",
+        "40",
+        "0.3",
+        "1e4",
+        "9e99999999999999999999",
+        "2×10⁴",
+        "2·10^4",
+        "1,5",
+        "0x10",
+        "1_000",
+        "+3",
+        "--3",
+        ".5",
+        "5.",
+        "e5",
+        "−7",
     ];
     prop_oneof![
         4 => prop::sample::select(extreme).prop_map(str::to_owned),
@@ -177,9 +254,44 @@ fn numbers() -> impl Strategy<Value = String> {
 
 fn units() -> impl Strategy<Value = String> {
     let known = vec![
-        "nm", "µm", "Å", "cm", "km", "K", "°C", "Ω µm²", "kΩ µm²", "fΩ m²", "Ω m²", "µΩ cm", "mΩ cm", "Ω m", "S/cm",
-        "/cm³", "cm⁻³", "A/cm²", "%", "", "ML", "Oe", "eV", "m^99", "m⁹⁹⁹⁹⁹⁹⁹⁹", "nm^-127", "m^128", "nm/m/m", "(nm",
-        "nm)", "((((nm))))", "nm nm nm nm", "1/nm", "Ω·cm", "mm²·Ω", "m^2147483648", "km^40", "nm^-40",
+        "nm",
+        "µm",
+        "Å",
+        "cm",
+        "km",
+        "K",
+        "°C",
+        "Ω µm²",
+        "kΩ µm²",
+        "fΩ m²",
+        "Ω m²",
+        "µΩ cm",
+        "mΩ cm",
+        "Ω m",
+        "S/cm",
+        "/cm³",
+        "cm⁻³",
+        "A/cm²",
+        "%",
+        "",
+        "ML",
+        "Oe",
+        "eV",
+        "m^99",
+        "m⁹⁹⁹⁹⁹⁹⁹⁹",
+        "nm^-127",
+        "m^128",
+        "nm/m/m",
+        "(nm",
+        "nm)",
+        "((((nm))))",
+        "nm nm nm nm",
+        "1/nm",
+        "Ω·cm",
+        "mm²·Ω",
+        "m^2147483648",
+        "km^40",
+        "nm^-40",
     ];
     prop_oneof![
         8 => prop::sample::select(known).prop_map(str::to_owned),
@@ -188,17 +300,19 @@ fn units() -> impl Strategy<Value = String> {
 }
 
 fn quantities() -> impl Strategy<Value = String> {
-    (numbers(), numbers(), units(), units(), 0_usize..12).prop_map(|(a, b, u, v, form)| match form {
-        0..4 => format!("{a} {u}"),
-        4 => format!("{a} ± {b} {u}"),
-        5 => format!("{a} {u} ± {b} {v}"),
-        6 => format!("{a} {u} ± {b} %"),
-        7 => format!("{a} {u} ×/ {b}"),
-        8 => format!("{a} .. {b} {u}"),
-        9 => format!("{a} +{b} -{a} {u}"),
-        10 => format!("> {a} {u}"),
-        _ => format!("{a}{u} ± ± {b}"),
-    })
+    (numbers(), numbers(), units(), units(), 0_usize..12).prop_map(
+        |(a, b, u, v, form)| match form {
+            0..4 => format!("{a} {u}"),
+            4 => format!("{a} ± {b} {u}"),
+            5 => format!("{a} {u} ± {b} {v}"),
+            6 => format!("{a} {u} ± {b} %"),
+            7 => format!("{a} {u} ×/ {b}"),
+            8 => format!("{a} .. {b} {u}"),
+            9 => format!("{a} +{b} -{a} {u}"),
+            10 => format!("> {a} {u}"),
+            _ => format!("{a}{u} ± ± {b}"),
+        },
+    )
 }
 
 /// A value as TOML.
@@ -219,22 +333,90 @@ fn values() -> impl Strategy<Value = String> {
 
 fn keys() -> impl Strategy<Value = &'static str> {
     prop::sample::select(vec![
-        "title", "temperature", "current_density", "kind", "ferromagnet", "barrier", "interface", "normal", "material",
-        "resistivity", "conductivity", "bulk_asymmetry", "spin_diffusion_length", "thickness", "doping", "dopant",
-        "type", "end", "magnetization", "channel", "note", "resistance_area", "interface_spin_resistance",
-        "interface_asymmetry", "spin_memory_loss", "flips_with", "left", "right", "injected_polarization",
-        "magnetoresistance", "resistance_area_change", "state", "id", "name", "class", "format", "property", "value",
-        "uncertainty", "obtained", "source", "locus", "parents", "rule", "status", "why", "conditions", "form",
-        "coefficients", "range", "formula", "electrodes", "polarization", "technique", "spread",
+        "title",
+        "temperature",
+        "current_density",
+        "kind",
+        "ferromagnet",
+        "barrier",
+        "interface",
+        "normal",
+        "material",
+        "resistivity",
+        "conductivity",
+        "bulk_asymmetry",
+        "spin_diffusion_length",
+        "thickness",
+        "doping",
+        "dopant",
+        "type",
+        "end",
+        "magnetization",
+        "channel",
+        "note",
+        "resistance_area",
+        "interface_spin_resistance",
+        "interface_asymmetry",
+        "spin_memory_loss",
+        "flips_with",
+        "left",
+        "right",
+        "injected_polarization",
+        "magnetoresistance",
+        "resistance_area_change",
+        "state",
+        "id",
+        "name",
+        "class",
+        "format",
+        "property",
+        "value",
+        "uncertainty",
+        "obtained",
+        "source",
+        "locus",
+        "parents",
+        "rule",
+        "status",
+        "why",
+        "conditions",
+        "form",
+        "coefficients",
+        "range",
+        "formula",
+        "electrodes",
+        "polarization",
+        "technique",
+        "spread",
     ])
 }
 
 fn heads() -> impl Strategy<Value = &'static str> {
     prop::sample::select(vec![
-        "", "[injector]", "[injector.ferromagnet]", "[injector.barrier]", "[injector.interface]", "[channel]",
-        "[detector]", "[detector.ferromagnet]", "[detector.barrier]", "[layout]", "[goal]", "[[stack]]",
-        "[stack.normal]", "[ends]", "[material]", "[interface]", "[[value]]", "[[pair]]", "[[contact]]",
-        "[[calibration]]", "[[law]]", "[[note]]", "[[prior]]", "[value.conditions]",
+        "",
+        "[injector]",
+        "[injector.ferromagnet]",
+        "[injector.barrier]",
+        "[injector.interface]",
+        "[channel]",
+        "[detector]",
+        "[detector.ferromagnet]",
+        "[detector.barrier]",
+        "[layout]",
+        "[goal]",
+        "[[stack]]",
+        "[stack.normal]",
+        "[ends]",
+        "[material]",
+        "[interface]",
+        "[[value]]",
+        "[[pair]]",
+        "[[contact]]",
+        "[[calibration]]",
+        "[[law]]",
+        "[[note]]",
+        "[[prior]]",
+        "[value.conditions]",
     ])
 }
 
@@ -369,7 +551,13 @@ fn edits(most: usize) -> impl Strategy<Value = Vec<(usize, u8, char)>> {
 
 /// Paths of all single values of a tree.
 fn paths(node: &Node, here: &str, out: &mut Vec<String>) {
-    let step = |key: &str| if here.is_empty() { key.to_owned() } else { format!("{here}.{key}") };
+    let step = |key: &str| {
+        if here.is_empty() {
+            key.to_owned()
+        } else {
+            format!("{here}.{key}")
+        }
+    };
     match &node.value {
         Value::Table(entries) => {
             for e in entries {
@@ -418,14 +606,23 @@ fn generated_toml_is_read_without_panic() {
 #[test]
 fn edited_designs_answer_in_finite_numbers_or_are_refused() {
     let ends = Cell::new([0_usize; 3]);
-    cases(1200, 3, &(0..beginnings().len(), edits(3)), |(which, edits)| {
-        let end = design(&edited(beginnings()[which], &edits), false);
-        let mut count = ends.get();
-        count[end as usize] += 1;
-        ends.set(count);
-    });
+    cases(
+        1200,
+        3,
+        &(0..beginnings().len(), edits(3)),
+        |(which, edits)| {
+            let end = design(&edited(beginnings()[which], &edits), false);
+            let mut count = ends.get();
+            count[end as usize] += 1;
+            ends.set(count);
+        },
+    );
     let [not_toml, refused, answered] = ends.get();
-    assert!(not_toml >= 50 && refused >= 50 && answered >= 50, "{:?}", ends.get());
+    assert!(
+        not_toml >= 50 && refused >= 50 && answered >= 50,
+        "{:?}",
+        ends.get()
+    );
 }
 
 #[test]
@@ -442,7 +639,10 @@ fn edited_records_are_checked_without_panic() {
 #[test]
 fn any_value_at_any_path_answers_in_finite_numbers_or_is_refused() {
     let text = prop_oneof![6 => quantities(), 1 => words(), 2 => values()];
-    let strategy = (0..beginnings().len(), prop::collection::vec((any::<usize>(), text), 1..3));
+    let strategy = (
+        0..beginnings().len(),
+        prop::collection::vec((any::<usize>(), text), 1..3),
+    );
     let ends = Cell::new([0_usize; 3]);
     cases(1500, 5, &strategy, |(which, settings)| {
         let mut root = parse(&Source::new("a.toml", beginnings()[which])).unwrap();
@@ -466,10 +666,15 @@ fn any_value_at_any_path_answers_in_finite_numbers_or_is_refused() {
 /// Quantities that are of the right kind but as far out as is allowed, so that most of them are answered.
 #[test]
 fn numbers_at_the_ends_of_their_ranges_are_answered_in_finite_numbers() {
-    fn far(places: &'static [(&'static str, &'static str, i32, i32)]) -> impl Strategy<Value = (String, f64)> {
+    fn far(
+        places: &'static [(&'static str, &'static str, i32, i32)],
+    ) -> impl Strategy<Value = (String, f64)> {
         (prop::sample::select(places), 0.0..1.0_f64).prop_map(|((path, unit, low, high), f)| {
             let exponent = f64::from(low) + f * f64::from(high - low);
-            (format!("{path}={:e} {unit}", 10_f64.powf(exponent)), exponent)
+            (
+                format!("{path}={:e} {unit}", 10_f64.powf(exponent)),
+                exponent,
+            )
         })
     }
     const PLACES: &[(&str, &str, i32, i32)] = &[
@@ -484,7 +689,12 @@ fn numbers_at_the_ends_of_their_ranges_are_answered_in_finite_numbers() {
         ("channel.resistivity", "Ω m", -300, 12),
         ("channel.spin_diffusion_length", "m", -300, -1),
         ("channel.thickness", "m", -300, -1),
-        ("detector.interface.interface_spin_resistance", "Ω m²", -300, 6),
+        (
+            "detector.interface.interface_spin_resistance",
+            "Ω m²",
+            -300,
+            6,
+        ),
     ];
     const NEAR: &[(&str, &str, i32, i32)] = &[
         ("channel.resistivity", "Ω m", -9, 3),
@@ -514,14 +724,29 @@ fn any_variation_is_followed_or_refused_without_panic() {
         1 => quantities(),
     ];
     let fields = prop::sample::select(vec![
-        "temperature", "channel.thickness", "channel.resistivity", "injector.barrier.resistance_area",
-        "injector.barrier.interface_asymmetry", "channel.doping", "injector.ferromagnet.bulk_asymmetry",
-        "current_density", "channel.material", "detector", "stack.1.normal.thickness", "a.b.c.thickness",
+        "temperature",
+        "channel.thickness",
+        "channel.resistivity",
+        "injector.barrier.resistance_area",
+        "injector.barrier.interface_asymmetry",
+        "channel.doping",
+        "injector.ferromagnet.bulk_asymmetry",
+        "current_density",
+        "channel.material",
+        "detector",
+        "stack.1.normal.thickness",
+        "a.b.c.thickness",
     ]);
-    let good = (-18_i32..4, 1_i32..9, prop::sample::select(vec![
-        ("channel.thickness", "m"), ("injector.barrier.resistance_area", "Ω m²"), ("channel.resistivity", "Ω m"),
-    ]))
-    .prop_map(|(e, more, (field, unit))| format!("{field}=1e{e} .. 1e{} {unit}", e + more));
+    let good = (
+        -18_i32..4,
+        1_i32..9,
+        prop::sample::select(vec![
+            ("channel.thickness", "m"),
+            ("injector.barrier.resistance_area", "Ω m²"),
+            ("channel.resistivity", "Ω m"),
+        ]),
+    )
+        .prop_map(|(e, more, (field, unit))| format!("{field}=1e{e} .. 1e{} {unit}", e + more));
     let strategy = (
         0..2_usize,
         prop_oneof![3 => (fields, range).prop_map(|(f, r)| format!("{f}={r}")), 1 => good, 1 => "\\PC{0,20}"],
@@ -530,7 +755,9 @@ fn any_variation_is_followed_or_refused_without_panic() {
     let answered = Cell::new(0);
     cases(1200, 7, &strategy, |(which, text, points)| {
         let root = parse(&Source::new("a.toml", beginnings()[which])).unwrap();
-        let Ok(variation) = read_variation(&text, points, None) else { return };
+        let Ok(variation) = read_variation(&text, points, None) else {
+            return;
+        };
         assert_eq!(variation.points.len(), points);
         LIBRARY.with(|library| {
             let faults = Faults::default();

@@ -1,5 +1,7 @@
 //! Do the outputs shown in README.md come out of the program, and do its commands name files that exist?
 
+#![allow(clippy::unwrap_used)]
+
 use std::path::Path;
 
 use assert_cmd::Command;
@@ -36,7 +38,13 @@ fn the_outputs_shown_are_the_programs() {
     let mut shown = 0;
     for part in text.split("<!-- output of: ").skip(1) {
         let (command, rest) = part.split_once(" -->").unwrap();
-        let block = rest.split("```text\n").nth(1).unwrap().split("```").next().unwrap();
+        let block = rest
+            .split("```text\n")
+            .nth(1)
+            .unwrap()
+            .split("```")
+            .next()
+            .unwrap();
         let output = Command::new(env!("CARGO_BIN_EXE_injectance"))
             .current_dir(env!("CARGO_MANIFEST_DIR"))
             .env("COLUMNS", "80")
@@ -45,7 +53,11 @@ fn the_outputs_shown_are_the_programs() {
             .output()
             .unwrap();
         assert!(output.status.success(), "{command}");
-        assert_eq!(String::from_utf8(output.stdout).unwrap(), block, "README.md shows another output of `{command}`");
+        assert_eq!(
+            String::from_utf8(output.stdout).unwrap(),
+            block,
+            "README.md shows another output of `{command}`"
+        );
         shown += 1;
     }
     assert_eq!(shown, 2);
@@ -55,7 +67,16 @@ fn the_outputs_shown_are_the_programs() {
 fn the_two_commands_are_there() {
     let text = readme();
     let command = |mark: &str| {
-        text.split(mark).nth(1).unwrap().split("```sh\n").nth(1).unwrap().lines().next().unwrap().to_owned()
+        text.split(mark)
+            .nth(1)
+            .unwrap()
+            .split("```sh\n")
+            .nth(1)
+            .unwrap()
+            .lines()
+            .next()
+            .unwrap()
+            .to_owned()
     };
     assert_eq!(command("<!-- test -->"), "cargo test --locked");
     let run = command("<!-- run -->");

@@ -1,5 +1,7 @@
 //! Are the rooms in order? Each file under `src/<room>` may import only rooms to its left.
 
+#![allow(clippy::unwrap_used)]
+
 use std::fs;
 use std::path::{Path, PathBuf};
 
@@ -46,7 +48,10 @@ fn imports(text: &str) -> Vec<(usize, String)> {
         let mut rest = code;
         while let Some(at) = rest.find("crate::") {
             rest = &rest[at + "crate::".len()..];
-            let room: String = rest.chars().take_while(|c| c.is_alphanumeric() || *c == '_' || *c == '{').collect();
+            let room: String = rest
+                .chars()
+                .take_while(|c| c.is_alphanumeric() || *c == '_' || *c == '{')
+                .collect();
             found.push((number + 1, room));
         }
     }
@@ -65,7 +70,10 @@ fn no_room_looks_to_its_right() {
             continue;
         }
         let room = folder.file_name().unwrap().to_string_lossy().into_owned();
-        assert!(place(&room).is_some(), "src/{room} has no place in the order of rooms");
+        assert!(
+            place(&room).is_some(),
+            "src/{room} has no place in the order of rooms"
+        );
         let mut files = Vec::new();
         sources(&folder, &mut files);
         for file in files {
@@ -81,7 +89,11 @@ fn no_room_looks_to_its_right() {
     }
     assert!(read >= 50, "only {read} files were read");
     assert!(seen >= 100, "only {seen} imports were seen");
-    assert!(faults.is_empty(), "imports against the order of rooms:\n{}", faults.join("\n"));
+    assert!(
+        faults.is_empty(),
+        "imports against the order of rooms:\n{}",
+        faults.join("\n")
+    );
 }
 
 #[test]
@@ -89,10 +101,15 @@ fn the_order_itself_refuses_what_it_should() {
     assert!(may("studies", "models") && may("cli", "numerics") && may("designs", "materials"));
     assert!(!may("models", "materials") && !may("materials", "models"));
     assert!(!may("numerics", "quantities") && !may("models", "studies"));
-    let sample = "use crate::presentation::lines;\n// use crate::cli::x;\nlet y = crate::models::z();";
+    let sample =
+        "use crate::presentation::lines;\n// use crate::cli::x;\nlet y = crate::models::z();";
     let seen: Vec<String> = imports(sample).into_iter().map(|(_, room)| room).collect();
     assert_eq!(seen, ["presentation", "models"]);
-    assert!(imports("use crate::{models, cli};").iter().all(|(_, room)| !may("cli", room)));
+    assert!(
+        imports("use crate::{models, cli};")
+            .iter()
+            .all(|(_, room)| !may("cli", room))
+    );
 }
 
 /// Text for people belongs to presentation and cli, printing to cli alone.
@@ -106,7 +123,9 @@ fn only_the_command_line_prints() {
         .filter(|f| !f.starts_with(root.join("cli")) && !f.ends_with("build_index.rs"))
         .filter(|f| {
             let text = fs::read_to_string(f).unwrap();
-            ["println!", "eprintln!", "print!(", "stdout()", "stderr()"].iter().any(|p| text.contains(p))
+            ["println!", "eprintln!", "print!(", "stdout()", "stderr()"]
+                .iter()
+                .any(|p| text.contains(p))
         })
         .map(|f| f.display().to_string())
         .collect();

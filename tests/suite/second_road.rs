@@ -84,25 +84,56 @@ struct Case {
 fn random_layer(s: &mut Stream) -> (Piece, Element, injectance::models::ladder::Layer) {
     let (rho, lambda) = (s.log_between(1e-8, 1e-6), s.log_between(3e-9, 3e-7));
     let reduced = s.log_between(0.05, 6.0);
-    let beta = if s.chance(0.4) { 0.0 } else { s.between(-0.95, 0.95) };
+    let beta = if s.chance(0.4) {
+        0.0
+    } else {
+        s.between(-0.95, 0.95)
+    };
     let (flips, t) = (s.chance(0.5), reduced * lambda);
     let turn = if flips { Free } else { Fixed };
-    let kind = Kind::Medium { r: rho * lambda / (1.0 - beta * beta), reduced: t / lambda, ohmic: rho * t };
-    let piece = Piece { kind, asymmetry: beta, flips };
-    (piece, layer(rho, beta, lambda, t, turn), medium(rho, beta, lambda, t, turn))
+    let kind = Kind::Medium {
+        r: rho * lambda / (1.0 - beta * beta),
+        reduced: t / lambda,
+        ohmic: rho * t,
+    };
+    let piece = Piece {
+        kind,
+        asymmetry: beta,
+        flips,
+    };
+    (
+        piece,
+        layer(rho, beta, lambda, t, turn),
+        medium(rho, beta, lambda, t, turn),
+    )
 }
 
 fn random_joint(s: &mut Stream) -> (Piece, Element) {
     let (r_b, gamma) = (s.log_between(1e-16, 1e-12), s.between(-0.95, 0.95));
     let flips = s.chance(0.5);
-    let delta = if s.chance(0.3) { s.log_between(0.05, 3.0) } else { 0.0 };
+    let delta = if s.chance(0.3) {
+        s.log_between(0.05, 3.0)
+    } else {
+        0.0
+    };
     let kind = if delta > 0.0 {
-        Kind::Medium { r: r_b / delta, reduced: delta, ohmic: r_b * (1.0 - gamma * gamma) }
+        Kind::Medium {
+            r: r_b / delta,
+            reduced: delta,
+            ohmic: r_b * (1.0 - gamma * gamma),
+        }
     } else {
         Kind::Joint { r_b }
     };
     let turn = if flips { Free } else { Fixed };
-    (Piece { kind, asymmetry: gamma, flips }, interface(r_b, gamma, delta, turn))
+    (
+        Piece {
+            kind,
+            asymmetry: gamma,
+            flips,
+        },
+        interface(r_b, gamma, delta, turn),
+    )
 }
 
 fn random_case(s: &mut Stream) -> Case {
@@ -140,7 +171,12 @@ fn random_case(s: &mut Stream) -> Case {
         elements.push(element);
     }
     pieces.extend(outer[1]);
-    Case { pieces, endings, elements, ends }
+    Case {
+        pieces,
+        endings,
+        elements,
+        ends,
+    }
 }
 
 /// A linear form in the unknowns.
@@ -156,18 +192,28 @@ fn eliminate(rows: &mut [Vec<f64>], rhs: &mut [Vec<f64>]) {
     for (row, right) in rows.iter_mut().zip(rhs.iter_mut()) {
         let largest = row.iter().fold(0.0_f64, |m, v| m.max(v.abs()));
         assert!(largest > 0.0, "an empty equation");
-        row.iter_mut().chain(right.iter_mut()).for_each(|v| *v /= largest);
+        row.iter_mut()
+            .chain(right.iter_mut())
+            .for_each(|v| *v /= largest);
     }
     for c in 0..n {
-        let pivot = (c..n).max_by(|a, b| rows[*a][c].abs().total_cmp(&rows[*b][c].abs())).unwrap_or(c);
+        let pivot = (c..n)
+            .max_by(|a, b| rows[*a][c].abs().total_cmp(&rows[*b][c].abs()))
+            .unwrap_or(c);
         rows.swap(c, pivot);
         rhs.swap(c, pivot);
         let (lead, lead_rhs) = (rows[c].clone(), rhs[c].clone());
         for i in (0..n).filter(|i| *i != c) {
             let factor = rows[i][c] / lead[c];
             if factor.abs() > 0.0 {
-                rows[i].iter_mut().zip(&lead).for_each(|(v, l)| *v -= factor * l);
-                rhs[i].iter_mut().zip(&lead_rhs).for_each(|(v, l)| *v -= factor * l);
+                rows[i]
+                    .iter_mut()
+                    .zip(&lead)
+                    .for_each(|(v, l)| *v -= factor * l);
+                rhs[i]
+                    .iter_mut()
+                    .zip(&lead_rhs)
+                    .for_each(|(v, l)| *v -= factor * l);
             }
         }
     }
@@ -187,7 +233,10 @@ struct Dense {
 
 fn dense(case: &Case) -> Dense {
     let n = case.pieces.len();
-    let open = [case.endings[0] == Ending::Open, case.endings[1] == Ending::Open];
+    let open = [
+        case.endings[0] == Ending::Open,
+        case.endings[1] == Ending::Open,
+    ];
     let mut unknowns = 0;
     // u and J − β on the left and the right of each medium.
     let mut forms: Vec<Option<[Form; 4]>> = Vec::new();
@@ -225,12 +274,16 @@ fn dense(case: &Case) -> Dense {
         rows.push(row);
         rhs.push(right);
     };
-    let media: Vec<(usize, &[Form; 4])> =
-        forms.iter().enumerate().filter_map(|(i, f)| f.as_ref().map(|f| (i, f))).collect();
+    let media: Vec<(usize, &[Form; 4])> = forms
+        .iter()
+        .enumerate()
+        .filter_map(|(i, f)| f.as_ref().map(|f| (i, f)))
+        .collect();
     let beta = |i: usize| case.pieces[i].asymmetry;
-    for (ending, (i, f), at) in
-        [(case.endings[0], media[0], 0), (case.endings[1], media[media.len() - 1], 2)]
-    {
+    for (ending, (i, f), at) in [
+        (case.endings[0], media[0], 0),
+        (case.endings[1], media[media.len() - 1], 2),
+    ] {
         match ending {
             Ending::Open => {}
             Ending::Sink => equation(&[f[at].clone()], &[]),
@@ -240,7 +293,10 @@ fn dense(case: &Case) -> Dense {
     }
     for pair in media.windows(2) {
         let ((p, left), (q, right)) = (pair[0], pair[1]);
-        equation(&[left[3].clone(), scaled(&right[1], -1.0)], &[(q, beta(q)), (p, -beta(p))]);
+        equation(
+            &[left[3].clone(), scaled(&right[1], -1.0)],
+            &[(q, beta(q)), (p, -beta(p))],
+        );
         let step = [right[0].clone(), scaled(&left[2], -1.0)];
         if let (true, Kind::Joint { r_b }) = (q == p + 2, case.pieces[p + 1].kind) {
             let with = [step[0].clone(), step[1].clone(), scaled(&left[3], r_b)];
@@ -255,7 +311,11 @@ fn dense(case: &Case) -> Dense {
         (0..n)
             .map(|source| {
                 let sum: f64 = form.iter().map(|(k, v)| v * rhs[*k][source]).sum();
-                sum + if own == Some(source) { beta(source) } else { 0.0 }
+                sum + if own == Some(source) {
+                    beta(source)
+                } else {
+                    0.0
+                }
             })
             .collect()
     };
@@ -264,7 +324,12 @@ fn dense(case: &Case) -> Dense {
         .enumerate()
         .map(|(i, f)| match f {
             None => Default::default(),
-            Some(f) => [value(&f[0], None), value(&f[1], Some(i)), value(&f[2], None), value(&f[3], Some(i))],
+            Some(f) => [
+                value(&f[0], None),
+                value(&f[1], Some(i)),
+                value(&f[2], None),
+                value(&f[3], Some(i)),
+            ],
         })
         .collect();
     let (mut ohmic, mut reading) = (0.0, Vec::new());
@@ -273,7 +338,12 @@ fn dense(case: &Case) -> Dense {
         match piece.kind {
             Kind::Joint { r_b } => {
                 ohmic += r_b;
-                reading.push(sides[i - 1][3].iter().map(|j| -piece.asymmetry * r_b * j).collect());
+                reading.push(
+                    sides[i - 1][3]
+                        .iter()
+                        .map(|j| -piece.asymmetry * r_b * j)
+                        .collect(),
+                );
             }
             Kind::Medium { r, ohmic: own, .. } => {
                 let strip = (i == first && case.endings[0] == Ending::Fed)
@@ -281,7 +351,8 @@ fn dense(case: &Case) -> Dense {
                 if !strip {
                     ohmic += own;
                 }
-                let from = |cut: bool, side: usize, k: usize| if cut { 0.0 } else { sides[i][side][k] };
+                let from =
+                    |cut: bool, side: usize, k: usize| if cut { 0.0 } else { sides[i][side][k] };
                 let cut_left = i == first && matches!(case.endings[0], Ending::Open | Ending::Fed);
                 let cut_right = i == last && matches!(case.endings[1], Ending::Open | Ending::Fed);
                 reading.push(
@@ -293,7 +364,11 @@ fn dense(case: &Case) -> Dense {
             }
         }
     }
-    Dense { sides, ohmic, reading }
+    Dense {
+        sides,
+        ohmic,
+        reading,
+    }
 }
 
 #[test]
@@ -309,14 +384,22 @@ fn seeded_random_stacks() {
             let sign: Vec<f64> = case
                 .pieces
                 .iter()
-                .map(|p| if p.flips && state == State::Antiparallel { -1.0 } else { 1.0 })
+                .map(|p| {
+                    if p.flips && state == State::Antiparallel {
+                        -1.0
+                    } else {
+                        1.0
+                    }
+                })
                 .collect();
             let sum = |parts: &[f64]| parts.iter().zip(&sign).map(|(v, w)| v * w).sum::<f64>();
             let size = |parts: &[f64]| parts.iter().map(|v| v.abs()).sum::<f64>();
             let solution = device.solve(state);
             for (k, face) in solution.faces.iter().enumerate() {
                 // The face's left neighbour is a medium, or its right one is: two joints never meet.
-                let right_of = (k + shift).checked_sub(1).filter(|i| !road.sides[*i][0].is_empty());
+                let right_of = (k + shift)
+                    .checked_sub(1)
+                    .filter(|i| !road.sides[*i][0].is_empty());
                 let (u, j) = match right_of {
                     Some(i) => (&road.sides[i][2], &road.sides[i][3]),
                     None => (&road.sides[k + shift][0], &road.sides[k + shift][1]),
@@ -324,16 +407,34 @@ fn seeded_random_stacks() {
                 let what = format!("stack {number}, face {k}, {state:?}");
                 // In the dense system J is β less a number of the same size, and u a difference where a sink is
                 // near: what it knows is relative to the largest numbers of the stack.
-                within_at(&what, face.polarization.si(), sum(j), size(j).max(J_FLOOR), ALLOWED);
+                within_at(
+                    &what,
+                    face.polarization.si(),
+                    sum(j),
+                    size(j).max(J_FLOOR),
+                    ALLOWED,
+                );
                 let got = face.accumulation_per_current_density.si();
-                let floor = road.sides.iter().flatten().map(|u| size(u)).fold(0.0, f64::max) * U_FLOOR;
+                let floor = road
+                    .sides
+                    .iter()
+                    .flatten()
+                    .map(|u| size(u))
+                    .fold(0.0, f64::max)
+                    * U_FLOOR;
                 within_at(&what, got, sum(u), size(u).max(floor), ALLOWED);
                 faces_compared += 1;
             }
             let readings: Vec<f64> = road.reading.iter().map(|r| sum(r)).collect();
             let want = road.ohmic + sum(&readings);
             let scale = road.ohmic + road.reading.iter().map(|r| size(r)).sum::<f64>();
-            within_at(&format!("stack {number}, RA {state:?}"), solution.resistance_area.si(), want, scale, ALLOWED);
+            within_at(
+                &format!("stack {number}, RA {state:?}"),
+                solution.resistance_area.si(),
+                want,
+                scale,
+                ALLOWED,
+            );
         }
         // Pairs of a source that flips and a reader that does not, twice (both orders) and with the sign turned twice.
         let (mut want, mut scale) = (0.0, 0.0);
@@ -344,7 +445,13 @@ fn seeded_random_stacks() {
             }
         }
         if scale > 0.0 {
-            within_at(&format!("stack {number}, ΔRA"), device.resistance_area_change().si(), want, scale, ALLOWED);
+            within_at(
+                &format!("stack {number}, ΔRA"),
+                device.resistance_area_change().si(),
+                want,
+                scale,
+                ALLOWED,
+            );
             changes += 1;
         }
     }

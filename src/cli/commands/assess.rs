@@ -19,17 +19,28 @@ use crate::studies::vary::vary;
 pub fn run(a: &Assess) -> Exit {
     let faults = Faults::default();
     if a.vary.is_none() && a.format == Format::Csv {
-        faults.push(option_fault("--format csv goes with --vary", "use `--format json` for a single answer"));
+        faults.push(option_fault(
+            "--format csv goes with --vary",
+            "use `--format json` for a single answer",
+        ));
     }
     if a.vary.is_some() && a.full {
-        faults.push(option_fault("--full and --vary exclude each other", "drop one of them"));
+        faults.push(option_fault(
+            "--full and --vary exclude each other",
+            "drop one of them",
+        ));
     }
     if a.vary.is_some() && a.strict {
-        faults.push(option_fault("--strict and --vary exclude each other", "drop one of them"));
+        faults.push(option_fault(
+            "--strict and --vary exclude each other",
+            "drop one of them",
+        ));
     }
     let library = library(&a.folders.materials, &faults);
     let tree = design_tree(&a.design, &a.set, &faults);
-    let (Some(tree), 0) = (tree, faults.count()) else { return refuse(&faults.take()) };
+    let (Some(tree), 0) = (tree, faults.count()) else {
+        return refuse(&faults.take());
+    };
     if let Some(text) = &a.vary {
         let spacing = a.spacing.map(|s| match s {
             SpacingWord::Log => Spacing::Logarithmic,
@@ -39,7 +50,9 @@ pub fn run(a: &Assess) -> Exit {
             Ok(variation) => variation,
             Err(fault) => return refuse(&[fault]),
         };
-        let Some(result) = vary(&tree, variation, &library, &faults) else { return refuse(&faults.take()) };
+        let Some(result) = vary(&tree, variation, &library, &faults) else {
+            return refuse(&faults.take());
+        };
         return match a.format {
             Format::Table => print(&varied::lines(&result, width(a.width)), Exit::Answered),
             Format::Json => print_json(&machine::varied(&result), Exit::Answered),
@@ -50,15 +63,22 @@ pub fn run(a: &Assess) -> Exit {
         };
     }
     let design = read_design(&tree, &library, &faults);
-    let (Some(design), 0) = (design, faults.count()) else { return refuse(&faults.take()) };
-    let Some(device) = resolve(&design, &library, &faults) else { return refuse(&faults.take()) };
+    let (Some(design), 0) = (design, faults.count()) else {
+        return refuse(&faults.take());
+    };
+    let Some(device) = resolve(&design, &library, &faults) else {
+        return refuse(&faults.take());
+    };
     let assessment = match assess(&design, device, &library) {
         Ok(assessment) => assessment,
         Err(why) => {
             return refuse(&[Fault {
                 place: Some(design.place.clone()),
                 field: String::new(),
-                wrong: Wrong::Conflict { reason: format!("the stack cannot be solved: {why:?}"), help: None },
+                wrong: Wrong::Conflict {
+                    reason: format!("the stack cannot be solved: {why:?}"),
+                    help: None,
+                },
             }]);
         }
     };
@@ -78,7 +98,10 @@ fn option_fault(reason: &str, help: &str) -> Fault {
     Fault {
         place: None,
         field: String::new(),
-        wrong: Wrong::Conflict { reason: reason.to_owned(), help: Some(help.to_owned()) },
+        wrong: Wrong::Conflict {
+            reason: reason.to_owned(),
+            help: Some(help.to_owned()),
+        },
     }
 }
 

@@ -12,7 +12,11 @@ use crate::studies::findings::RULES;
 pub fn run(a: &Findings) -> Exit {
     let mut t = table(&["rule", "severity", "speaks up when"], width(a.width), &[]);
     for rule in RULES {
-        t.add_row(vec![rule.name, severity_word(rule.severity), rule_text(rule.name)]);
+        t.add_row(vec![
+            rule.name,
+            severity_word(rule.severity),
+            rule_text(rule.name),
+        ]);
     }
     keep_whole(&mut t, &[0, 1]);
     print(&table_lines(&t), Exit::Answered)

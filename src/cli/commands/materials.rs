@@ -20,7 +20,10 @@ pub fn list(a: &List) -> Exit {
     if faults.count() > 0 {
         return refuse(&faults.take());
     }
-    print(&records::list(&library.listed(), width(a.width)), Exit::Answered)
+    print(
+        &records::list(&library.listed(), width(a.width)),
+        Exit::Answered,
+    )
 }
 
 /// `show`.
@@ -32,10 +35,15 @@ pub fn show(a: &Show) -> Exit {
         let listed = library.listed();
         let names: Vec<&str> = listed
             .iter()
-            .flat_map(|l| std::iter::once(l.id.as_str()).chain(l.aliases.iter().map(String::as_str)))
+            .flat_map(|l| {
+                std::iter::once(l.id.as_str()).chain(l.aliases.iter().map(String::as_str))
+            })
             .collect();
         faults.push(Fault {
-            place: Some(Place { source: Source::new("materials show", a.name.clone()), span: 0..a.name.len() }),
+            place: Some(Place {
+                source: Source::new("materials show", a.name.clone()),
+                span: 0..a.name.len(),
+            }),
             field: String::new(),
             wrong: Wrong::UnknownWord {
                 what: "material or interface",
@@ -50,7 +58,11 @@ pub fn show(a: &Show) -> Exit {
     let lines = library
         .material(&id, &faults)
         .map(|m| records::material(&m, &library, width))
-        .or_else(|| library.interface(&id, &faults).map(|i| records::interface(&i, &library, width)));
+        .or_else(|| {
+            library
+                .interface(&id, &faults)
+                .map(|i| records::interface(&i, &library, width))
+        });
     match (lines, faults.count()) {
         (Some(lines), 0) => print(&lines, Exit::Answered),
         _ => refuse(&faults.take()),
@@ -62,13 +74,21 @@ pub fn show(a: &Show) -> Exit {
 pub fn check(a: &Check) -> Exit {
     let faults = Faults::default();
     let counted = if a.paths.is_empty() {
-        let mut files: Vec<(String, String)> =
-            Library::shipped_files().iter().map(|f| (f.path.to_owned(), f.text.to_owned())).collect();
-        files.push(("materials/references.bib".to_owned(), Library::shipped_references().to_owned()));
+        let mut files: Vec<(String, String)> = Library::shipped_files()
+            .iter()
+            .map(|f| (f.path.to_owned(), f.text.to_owned()))
+            .collect();
+        files.push((
+            "materials/references.bib".to_owned(),
+            Library::shipped_references().to_owned(),
+        ));
         check_files(&files, None, false, &faults)
     } else {
-        let files: Vec<(String, String)> =
-            a.paths.iter().flat_map(|p| record_files(p, &faults)).collect();
+        let files: Vec<(String, String)> = a
+            .paths
+            .iter()
+            .flat_map(|p| record_files(p, &faults))
+            .collect();
         check_files(&files, Some(&Library::shipped()), true, &faults)
     };
     if faults.count() > 0 {

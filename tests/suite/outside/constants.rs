@@ -35,7 +35,12 @@ fn agree_to_every_printed_digit() {
     assert_eq!(constants.as_object().unwrap().len(), 9);
     for (symbol, ours, _) in OURS {
         // Both are the double nearest to the same decimal number, so nothing is allowed between them.
-        close_at(symbol, ours, constants[symbol]["value"].as_f64().unwrap(), 0.0);
+        close_at(
+            symbol,
+            ours,
+            constants[symbol]["value"].as_f64().unwrap(),
+            0.0,
+        );
     }
 }
 
@@ -57,5 +62,10 @@ fn constants_that_depend_on_each_other_do() {
     close_at("ħ = h/2π", h_bar, value("hbar"), 1e-15);
     close_at("1 eV = e · 1 V", ELEMENTARY_CHARGE, value("eV"), 0.0);
     // μ_B = eħ/2m_e, to the digits that the adjustment rounds to.
-    close_at("μ_B", ELEMENTARY_CHARGE * h_bar / (2.0 * ELECTRON_MASS), BOHR_MAGNETON, 1e-10);
+    close_at(
+        "μ_B",
+        ELEMENTARY_CHARGE * h_bar / (2.0 * ELECTRON_MASS),
+        BOHR_MAGNETON,
+        1e-10,
+    );
 }

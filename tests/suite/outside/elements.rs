@@ -37,17 +37,27 @@ const BULK: f64 = 0.05;
 fn reference(symbol: &str) -> f64 {
     let root: Value = serde_json::from_str(TEXT).unwrap();
     assert_eq!(root["elements"].as_object().unwrap().len(), 11);
-    root["elements"][symbol]["pymatgen-core"]["resistivity"].as_f64().unwrap()
+    root["elements"][symbol]["pymatgen-core"]["resistivity"]
+        .as_f64()
+        .unwrap()
 }
 
 fn resistivities(id: &str) -> Vec<ValueRecord> {
     let faults = Faults::default();
     let material = Library::shipped().material(id, &faults).unwrap();
-    material.values.iter().filter(|v| v.property.name == "resistivity").cloned().collect()
+    material
+        .values
+        .iter()
+        .filter(|v| v.property.name == "resistivity")
+        .cloned()
+        .collect()
 }
 
 fn room_temperature_bulk(record: &ValueRecord) -> bool {
-    let warm = record.common.temperature.is_some_and(|t| (290.0..=300.0).contains(&t));
+    let warm = record
+        .common
+        .temperature
+        .is_some_and(|t| (290.0..=300.0).contains(&t));
     warm && record.common.conditions.form.as_deref() == Some("bulk")
 }
 
@@ -56,7 +66,10 @@ fn the_named_records_agree_to_their_digits() {
     for (id, symbol, record) in METALS {
         let records = resistivities(id);
         let found = records.iter().find(|r| r.common.id == record).unwrap();
-        assert!(room_temperature_bulk(found), "{record} is not of the bulk at room temperature");
+        assert!(
+            room_temperature_bulk(found),
+            "{record} is not of the bulk at room temperature"
+        );
         // The same decimal number; units are converted, which may cost the last place.
         close_at(record, found.reading.si, reference(symbol), 1e-15);
     }
@@ -68,7 +81,10 @@ fn every_other_bulk_record_at_room_temperature_is_near() {
     let mut compared = BTreeSet::new();
     for (id, symbol, _) in METALS {
         let want = reference(symbol);
-        for record in resistivities(id).iter().filter(|r| room_temperature_bulk(r)) {
+        for record in resistivities(id)
+            .iter()
+            .filter(|r| room_temperature_bulk(r))
+        {
             compared.insert(record.common.id.clone());
             // NaN must count as far.
             let near = deviation(record.reading.si, want, want) <= BULK;
@@ -78,6 +94,12 @@ fn every_other_bulk_record_at_room_temperature_is_near() {
         }
     }
     let excepted: BTreeSet<String> = EXCEPTIONS.iter().map(|(id, _)| (*id).to_owned()).collect();
-    assert_eq!(far, excepted, "records far from the reference (left) and those allowed to be (right)");
-    assert!(compared.len() >= METALS.len() + 4, "only {compared:?} were compared");
+    assert_eq!(
+        far, excepted,
+        "records far from the reference (left) and those allowed to be (right)"
+    );
+    assert!(
+        compared.len() >= METALS.len() + 4,
+        "only {compared:?} were compared"
+    );
 }

@@ -29,12 +29,18 @@ fn stacks() -> Vec<Value> {
 }
 
 fn number(value: &Value, key: &str) -> f64 {
-    value[key].as_f64().unwrap_or_else(|| panic!("no number `{key}` in {value}"))
+    value[key]
+        .as_f64()
+        .unwrap_or_else(|| panic!("no number `{key}` in {value}"))
 }
 
 /// A decimal string as the nearest double.
 fn decimal(value: &Value) -> f64 {
-    value.as_str().unwrap_or_else(|| panic!("{value} is no decimal string")).parse().unwrap()
+    value
+        .as_str()
+        .unwrap_or_else(|| panic!("{value} is no decimal string"))
+        .parse()
+        .unwrap()
 }
 
 /// Magnetization and the asymmetry it goes with: a magnet that flips and starts reversed is one that flips
@@ -55,8 +61,18 @@ fn orientation(value: &Value, asymmetry: f64) -> (Magnetization, f64) {
 
 fn medium_of(value: &Value) -> injectance::models::ladder::Layer {
     let (magnetization, beta) = orientation(value, number(value, "beta"));
-    let thickness = if value["thickness"].is_null() { f64::INFINITY } else { number(value, "thickness") };
-    medium(number(value, "resistivity"), beta, number(value, "lambda"), thickness, magnetization)
+    let thickness = if value["thickness"].is_null() {
+        f64::INFINITY
+    } else {
+        number(value, "thickness")
+    };
+    medium(
+        number(value, "resistivity"),
+        beta,
+        number(value, "lambda"),
+        thickness,
+        magnetization,
+    )
 }
 
 fn element(value: &Value) -> Element {
@@ -64,7 +80,12 @@ fn element(value: &Value) -> Element {
         "layer" => Element::Layer(medium_of(value)),
         "interface" => {
             let (magnetization, gamma) = orientation(value, number(value, "gamma"));
-            interface(number(value, "r_b"), gamma, number(value, "delta"), magnetization)
+            interface(
+                number(value, "r_b"),
+                gamma,
+                number(value, "delta"),
+                magnetization,
+            )
         }
         other => panic!("element kind {other}"),
     }
@@ -81,7 +102,12 @@ fn end(value: &Value) -> End {
 }
 
 fn build(value: &Value) -> Stack {
-    let elements: Vec<Element> = value["elements"].as_array().unwrap().iter().map(element).collect();
+    let elements: Vec<Element> = value["elements"]
+        .as_array()
+        .unwrap()
+        .iter()
+        .map(element)
+        .collect();
     Stack::new(end(&value["left"]), &elements, end(&value["right"])).unwrap()
 }
 
@@ -90,7 +116,10 @@ fn exact(text: &str) -> (i128, i32) {
     let (digits, exponent) = text.split_once('e').unwrap_or((text, "0"));
     let (whole, part) = digits.split_once('.').unwrap_or((digits, ""));
     let exponent: i32 = exponent.parse().unwrap();
-    (format!("{whole}{part}").parse().unwrap(), exponent - i32::try_from(part.len()).unwrap())
+    (
+        format!("{whole}{part}").parse().unwrap(),
+        exponent - i32::try_from(part.len()).unwrap(),
+    )
 }
 
 /// `text` minus the double `near`. Where they agree in leading digits both are taken to 28 digits.
@@ -129,7 +158,10 @@ fn resistance_without_strips(value: &Value, key: &str) -> f64 {
     let products: Vec<(f64, f64)> = strips
         .iter()
         .map(|k| {
-            let (rho, t) = (number(&elements[*k], "resistivity"), number(&elements[*k], "thickness"));
+            let (rho, t) = (
+                number(&elements[*k], "resistivity"),
+                number(&elements[*k], "thickness"),
+            );
             (rho * t, rho.mul_add(t, -(rho * t)))
         })
         .collect();
@@ -148,12 +180,17 @@ fn resistance_without_strips(value: &Value, key: &str) -> f64 {
 fn the_file_holds_what_it_should() {
     let stacks = stacks();
     assert_eq!(stacks.len(), 166);
-    let random = stacks.iter().filter(|s| s["name"].as_str().unwrap().starts_with("random ")).count();
+    let random = stacks
+        .iter()
+        .filter(|s| s["name"].as_str().unwrap().starts_with("random "))
+        .count();
     assert_eq!(random, 120);
     let mut ends: BTreeMap<String, usize> = BTreeMap::new();
     for stack in &stacks {
         for side in ["left", "right"] {
-            *ends.entry(stack[side]["kind"].as_str().unwrap().to_owned()).or_default() += 1;
+            *ends
+                .entry(stack[side]["kind"].as_str().unwrap().to_owned())
+                .or_default() += 1;
         }
     }
     assert_eq!(ends.len(), 4);
@@ -166,11 +203,21 @@ fn spin_current_and_accumulation_at_every_face() {
     let mut compared = 0;
     for value in stacks() {
         let stack = build(&value);
-        let faces: Vec<usize> =
-            value["faces"].as_array().unwrap().iter().map(|f| usize::try_from(f.as_u64().unwrap()).unwrap()).collect();
-        for (state, key) in [(State::Parallel, "parallel"), (State::Antiparallel, "antiparallel")] {
+        let faces: Vec<usize> = value["faces"]
+            .as_array()
+            .unwrap()
+            .iter()
+            .map(|f| usize::try_from(f.as_u64().unwrap()).unwrap())
+            .collect();
+        for (state, key) in [
+            (State::Parallel, "parallel"),
+            (State::Antiparallel, "antiparallel"),
+        ] {
             let solution = stack.solve(state);
-            assert_eq!(solution.faces.len(), value["elements"].as_array().unwrap().len() + 1);
+            assert_eq!(
+                solution.faces.len(),
+                value["elements"].as_array().unwrap().len() + 1
+            );
             let result = &value["result"];
             for quantity in ["J", "u"] {
                 assert_eq!(result[key][quantity].as_array().unwrap().len(), faces.len());
@@ -183,7 +230,13 @@ fn spin_current_and_accumulation_at_every_face() {
                     };
                     let what = format!("{}, {key} {quantity} at face {k}", value["name"]);
                     let scale = decimal(&result["scale"][quantity][i]);
-                    within_at(&what, got, decimal(&result[key][quantity][i]), scale, ALLOWED);
+                    within_at(
+                        &what,
+                        got,
+                        decimal(&result[key][quantity][i]),
+                        scale,
+                        ALLOWED,
+                    );
                     compared += 1;
                 }
             }
@@ -197,7 +250,10 @@ fn resistance_area_product_in_both_states() {
     let mut compared = 0;
     for value in stacks() {
         let stack = build(&value);
-        for (state, key) in [(State::Parallel, "ra_parallel"), (State::Antiparallel, "ra_antiparallel")] {
+        for (state, key) in [
+            (State::Parallel, "ra_parallel"),
+            (State::Antiparallel, "ra_antiparallel"),
+        ] {
             let what = format!("{}, {key}", value["name"]);
             let want = resistance_without_strips(&value, key);
             // The reference has 25 digits with the strips in: that much it does not know about the rest.
@@ -235,12 +291,20 @@ fn change_of_resistance() {
     }
     // The subnormal one is "thickness/lambda = 700"; the twelve are "thickness/lambda = 2000" (1e-877) and the
     // eleven stacks with one magnet or one layer.
-    assert_eq!((of_itself, of_its_terms, subnormal, nothing), (150, 3, 1, 12));
+    assert_eq!(
+        (of_itself, of_its_terms, subnormal, nothing),
+        (150, 3, 1, 12)
+    );
 }
 
 #[test]
 fn the_digits_of_a_reference_string_are_kept() {
     // 1/3 to 25 digits minus its nearest double, worked out by hand from 0.333333333333333314829616256247…
-    close_at("1/3", minus("0.3333333333333333333333333", 1.0 / 3.0), 1.850_371_7e-17, 1e-7);
+    close_at(
+        "1/3",
+        minus("0.3333333333333333333333333", 1.0 / 3.0),
+        1.850_371_7e-17,
+        1e-7,
+    );
     close_at("100", minus("1.00000000000000001e2", 100.0), 1e-15, 1e-12);
 }

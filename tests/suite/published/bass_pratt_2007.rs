@@ -6,11 +6,17 @@
 use injectance::models::ladder::{End, Stack, State};
 
 use super::rows;
-use crate::bare::{Fixed, injected, interface, layer, polarization, stack, thick_ferromagnet, thick_normal};
+use crate::bare::{
+    Fixed, injected, interface, layer, polarization, stack, thick_ferromagnet, thick_normal,
+};
 use crate::compare::{close, close_at};
 
 fn contact(beta: f64, r_f: f64, r_n: f64, gamma: f64, r_b: f64, delta: f64) -> Stack {
-    stack(thick_ferromagnet(r_f, beta, Fixed), &[interface(r_b, gamma, delta, Fixed)], thick_normal(r_n))
+    stack(
+        thick_ferromagnet(r_f, beta, Fixed),
+        &[interface(r_b, gamma, delta, Fixed)],
+        thick_normal(r_n),
+    )
 }
 
 /// p on the normal side of F|I(δ)|N.
@@ -38,7 +44,12 @@ fn one_contact_with_loss() {
                     for r_n in [6e-15, 4e-9] {
                         let got = injected(&contact(beta, 2e-15, r_n, gamma, r_b, delta));
                         let want = closed_form(beta, 2e-15, r_n, gamma, r_b, delta);
-                        close_at(&format!("β {beta} γ {gamma} r_b* {r_b} δ {delta}"), got, want, 1e-12);
+                        close_at(
+                            &format!("β {beta} γ {gamma} r_b* {r_b} δ {delta}"),
+                            got,
+                            want,
+                            1e-12,
+                        );
                         compared += 1;
                     }
                 }
@@ -58,7 +69,10 @@ fn no_loss_is_the_limit_of_small_loss() {
         let delta = 10_f64.powi(-exponent);
         let off = none - injected(&contact(beta, r_f, r_n, gamma, r_b, delta));
         // The loss is of first order in δ; its size is set by the resistances, here below δ.
-        assert!(off > 0.0 && off < delta && off < last, "δ = {delta:e}: {off:e}");
+        assert!(
+            off > 0.0 && off < delta && off < last,
+            "δ = {delta:e}: {off:e}"
+        );
         last = off;
     }
 }
@@ -75,11 +89,16 @@ fn probability_of_a_flip() {
         let (r_f, beta): (f64, f64) = (2e-15, 0.73);
         let device = stack(
             thick_ferromagnet(r_f, beta, Fixed),
-            &[interface(5e-16, 0.0, delta, Fixed), layer(1e-8, 0.0, 1e-6, 1e-30, Fixed)],
+            &[
+                interface(5e-16, 0.0, delta, Fixed),
+                layer(1e-8, 0.0, 1e-6, 1e-30, Fixed),
+            ],
             End::SpinSink,
         );
-        let (before, after) =
-            (polarization(&device, 0, State::Parallel), polarization(&device, 1, State::Parallel));
+        let (before, after) = (
+            polarization(&device, 0, State::Parallel),
+            polarization(&device, 1, State::Parallel),
+        );
         close(after / before, 1.0 / delta.cosh(), 1e-13);
     }
 }

@@ -11,8 +11,8 @@ use injectance::quantities::dimensions::Measured;
 
 use super::{Row, rows};
 use crate::bare::{
-    Fixed, Free, change, injected, interface, normal, resistance, single_contact, spin_valve, stack,
-    thick_ferromagnet,
+    Fixed, Free, change, injected, interface, normal, resistance, single_contact, spin_valve,
+    stack, thick_ferromagnet,
 };
 use crate::compare::{close, close_at};
 
@@ -20,7 +20,14 @@ use crate::compare::{close, close_at};
 type Numbers = (f64, f64, f64, f64, f64, f64);
 
 fn numbers(row: &Row, r_b: f64) -> Numbers {
-    (row.input("beta"), row.input("r_F"), row.input("r_N"), row.input("gamma"), r_b, row.input("T"))
+    (
+        row.input("beta"),
+        row.input("r_F"),
+        row.input("r_N"),
+        row.input("gamma"),
+        r_b,
+        row.input("T"),
+    )
 }
 
 fn device((beta, r_f, r_n, gamma, r_b, t): Numbers) -> Stack {
@@ -84,7 +91,12 @@ fn two_equal_contacts() {
                 for t in [1e-4, 0.1, 1.0, 8.0] {
                     let n = (beta, 4.5e-15, 4e-9, gamma, r_b, t);
                     let what = format!("{n:?}");
-                    close_at(&what, resistance(&device(n), State::Parallel), parallel(n), 1e-12);
+                    close_at(
+                        &what,
+                        resistance(&device(n), State::Parallel),
+                        parallel(n),
+                        1e-12,
+                    );
                     if beta.abs() > 0.0 || (gamma.abs() > 0.0 && r_b > 0.0) {
                         close_at(&what, change(&device(n)), delta(n), 1e-10);
                         compared += 1;
@@ -136,7 +148,11 @@ fn two_different_contacts() {
         for two in kinds {
             for t in [1e-3, 0.5, 3.0] {
                 for r_n in [6e-15, 4e-9] {
-                    close(change(&build(one, two, r_n, t)), formula(one, two, r_n, t), 1e-12);
+                    close(
+                        change(&build(one, two, r_n, t)),
+                        formula(one, two, r_n, t),
+                        1e-12,
+                    );
                     compared += 1;
                 }
             }
@@ -160,7 +176,8 @@ fn peak_of((beta, r_f, r_n, gamma, _, t): Numbers) -> (f64, f64) {
     let (near, _) = largest(at, 1e-12_f64.ln(), 1e-5_f64.ln(), 1e-4);
     let step = 0.02;
     let slope = |x: f64| {
-        (8.0 * (at(x + step) - at(x - step)) - (at(x + 2.0 * step) - at(x - 2.0 * step))) / (12.0 * step)
+        (8.0 * (at(x + step) - at(x - step)) - (at(x + 2.0 * step) - at(x - 2.0 * step)))
+            / (12.0 * step)
     };
     let place = bracketed_root(slope, near - 0.1, near + 0.1, 1e-14).unwrap();
     (place.exp(), at(place))
@@ -181,11 +198,18 @@ fn largest_magnetoresistance_and_its_window() {
         for row in rows(name) {
             let half = 0.5 * peak(&row).1;
             let f = |ln: f64| ratio(numbers(&row, ln.exp())) - half;
-            row.check(bracketed_root(f, low.ln(), high.ln(), 0.0).unwrap().exp(), 1e-10);
+            row.check(
+                bracketed_root(f, low.ln(), high.ln(), 0.0).unwrap().exp(),
+                1e-10,
+            );
         }
     }
     // The height of a thin channel tends to γ²/(1 − γ²), a third for γ = 0.5.
-    close(ratio((0.46, 4.5e-15, 4e-9, 0.5, 6.5e-9, 1e-7)), 1.0 / 3.0, 1e-5);
+    close(
+        ratio((0.46, 4.5e-15, 4e-9, 0.5, 6.5e-9, 1e-7)),
+        1.0 / 3.0,
+        1e-5,
+    );
 }
 
 #[test]
@@ -205,8 +229,16 @@ fn best_interface_spin_resistance() {
         row.check(rule, 1e-14);
         // At T = 0.001 it is off by less than 0.1 %, if r_F/r_N is small beside T as well: with r_F of cobalt the
         // row for γ = 0.1 is 0.4 % below it.
-        close(peak_of((0.46, 4.5e-20, 4e-9, gamma, 0.0, 1e-3)).0 / 4e-9, rule, 1e-3);
-        close(peak_of((0.46, 4.5e-20, 4e-9, gamma, 0.0, 1e-5)).0 / 4e-9, rule, 2e-5);
+        close(
+            peak_of((0.46, 4.5e-20, 4e-9, gamma, 0.0, 1e-3)).0 / 4e-9,
+            rule,
+            1e-3,
+        );
+        close(
+            peak_of((0.46, 4.5e-20, 4e-9, gamma, 0.0, 1e-5)).0 / 4e-9,
+            rule,
+            2e-5,
+        );
     }
 }
 
@@ -221,11 +253,19 @@ fn dwell_time_against_lifetime() {
         let (r_b, t) = (row.input("r_b"), row.input("T"));
         row.check(form(gamma, r_n, r_b, t), 1e-13);
         // The form leaves out the channel resistance and the lower edge: 1.6 % here.
-        close(ratio((0.46, 4.5e-15, r_n, gamma, r_b, t)), form(gamma, r_n, r_b, t), 0.016);
+        close(
+            ratio((0.46, 4.5e-15, r_n, gamma, r_b, t)),
+            form(gamma, r_n, r_b, t),
+            0.016,
+        );
     }
     // High contacts on a thin channel: the form becomes exact, also past its half at r_b* = 2r_N/T.
     for r_b in [1e-5, 4e-5, 1e-3] {
-        close(ratio((0.46, 4.5e-15, 4e-9, 0.5, r_b, 1e-3)), form(0.5, 4e-9, r_b, 1e-3), 1.3e-3);
+        close(
+            ratio((0.46, 4.5e-15, 4e-9, 0.5, r_b, 1e-3)),
+            form(0.5, 4e-9, r_b, 1e-3),
+            1.3e-3,
+        );
     }
 }
 

@@ -70,20 +70,33 @@ impl Row {
         if let Some(printed) = &self.printed {
             let want: f64 = printed.parse().unwrap();
             // A millionth of a unit for a number cut off exactly one unit away.
-            close_at(&what, got, want, 1.000_001 * last_place(printed) / want.abs());
+            close_at(
+                &what,
+                got,
+                want,
+                1.000_001 * last_place(printed) / want.abs(),
+            );
         }
     }
 }
 
 fn text_number(value: &Value) -> f64 {
-    value.as_str().unwrap_or_else(|| panic!("{value} is no decimal string")).parse().unwrap()
+    value
+        .as_str()
+        .unwrap_or_else(|| panic!("{value} is no decimal string"))
+        .parse()
+        .unwrap()
 }
 
 /// One unit of the last digit of a decimal number.
 fn last_place(text: &str) -> f64 {
     let (digits, exponent) = text.split_once('e').unwrap_or((text, "0"));
-    let places = digits.split_once('.').map_or(0, |(_, part)| i32::try_from(part.len()).unwrap());
-    format!("1e{}", exponent.parse::<i32>().unwrap() - places).parse().unwrap()
+    let places = digits
+        .split_once('.')
+        .map_or(0, |(_, part)| i32::try_from(part.len()).unwrap());
+    format!("1e{}", exponent.parse::<i32>().unwrap() - places)
+        .parse()
+        .unwrap()
 }
 
 fn all_rows() -> Vec<Row> {
@@ -103,8 +116,14 @@ fn all_rows() -> Vec<Row> {
 
 /// The rows of one name, as many as [`NAMES`] says.
 fn rows(name: &str) -> Vec<Row> {
-    let (_, count) = NAMES.iter().find(|(n, _)| *n == name).unwrap_or_else(|| panic!("no rows `{name}`"));
-    let found: Vec<Row> = all_rows().into_iter().filter(|row| row.name == name).collect();
+    let (_, count) = NAMES
+        .iter()
+        .find(|(n, _)| *n == name)
+        .unwrap_or_else(|| panic!("no rows `{name}`"));
+    let found: Vec<Row> = all_rows()
+        .into_iter()
+        .filter(|row| row.name == name)
+        .collect();
     assert_eq!(found.len(), *count, "{name}");
     assert!(!found.is_empty(), "{name}");
     found
@@ -113,9 +132,16 @@ fn rows(name: &str) -> Vec<Row> {
 #[test]
 fn every_row_of_the_file_has_a_name_that_is_used() {
     let all = all_rows();
-    assert_eq!(all.len(), NAMES.iter().map(|(_, count)| count).sum::<usize>());
+    assert_eq!(
+        all.len(),
+        NAMES.iter().map(|(_, count)| count).sum::<usize>()
+    );
     for row in &all {
-        assert!(NAMES.iter().any(|(name, _)| *name == row.name), "{}", row.name);
+        assert!(
+            NAMES.iter().any(|(name, _)| *name == row.name),
+            "{}",
+            row.name
+        );
     }
     let sources = [
         include_str!("schmidt_2000.rs"),
@@ -125,13 +151,21 @@ fn every_row_of_the_file_has_a_name_that_is_used() {
     ];
     for (name, _) in NAMES {
         let quoted = format!("\"{name}\"");
-        assert!(sources.iter().any(|source| source.contains(&quoted)), "no test reads {name}");
+        assert!(
+            sources.iter().any(|source| source.contains(&quoted)),
+            "no test reads {name}"
+        );
     }
 }
 
 #[test]
 fn last_places() {
-    for (text, want) in [("0.956", 1e-3), ("4e-9", 1e-9), ("1.9848e-14", 1e-18), ("12", 1.0)] {
+    for (text, want) in [
+        ("0.956", 1e-3),
+        ("4e-9", 1e-9),
+        ("1.9848e-14", 1e-18),
+        ("12", 1.0),
+    ] {
         close_at(text, last_place(text), want, 1e-15);
     }
 }

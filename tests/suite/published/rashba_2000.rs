@@ -40,7 +40,11 @@ fn injection_coefficient_from_channel_conductivities() {
                 let gamma = (contact.0 - contact.1) / c;
                 let r_f = lambda / (s * (1.0 - beta) * (1.0 + beta));
                 let r_b = 1.0 / (c * (1.0 - gamma) * (1.0 + gamma));
-                close(injected(&single_contact(beta, r_f, r_n, gamma, r_b)), want, 1e-10);
+                close(
+                    injected(&single_contact(beta, r_f, r_n, gamma, r_b)),
+                    want,
+                    1e-10,
+                );
                 compared += 1;
             }
         }
@@ -52,11 +56,23 @@ fn injection_coefficient_from_channel_conductivities() {
 fn a_high_contact_injects_its_own_asymmetry_and_a_low_one_that_of_the_mismatch() {
     let (beta, r_f, r_n, gamma) = (0.46, 4.5e-15, 4e-9, 0.5);
     // r_c ≫ r_N: p = γ(1 − r_N/r_c …).
-    close(injected(&single_contact(beta, r_f, r_n, gamma, 1.0)), gamma, 1e-8);
+    close(
+        injected(&single_contact(beta, r_f, r_n, gamma, 1.0)),
+        gamma,
+        1e-8,
+    );
     // r_c ≪ r_F: what a bare contact injects.
     let bare = beta * r_f / (r_f + r_n);
-    close(injected(&single_contact(beta, r_f, r_n, gamma, 1e-26)), bare, 1e-10);
+    close(
+        injected(&single_contact(beta, r_f, r_n, gamma, 1e-26)),
+        bare,
+        1e-10,
+    );
     // The contact has to outweigh the channel, not the magnet: half of γ at r_c = r_N + r_F − 2βr_F/γ.
     let half = r_n + r_f - 2.0 * beta * r_f / gamma;
-    close(injected(&single_contact(beta, r_f, r_n, gamma, half)), 0.5 * gamma, 1e-12);
+    close(
+        injected(&single_contact(beta, r_f, r_n, gamma, half)),
+        0.5 * gamma,
+        1e-12,
+    );
 }

@@ -58,7 +58,11 @@ fn single_contact() {
     for beta in [-0.9, -0.3, 0.1, 0.46, 0.9, 0.999, 0.999_999_9] {
         for r_f in [1e-16, 4.5e-15, 1e-12, 1e-8] {
             for r_n in [1e-16, 6e-15, 1e-10, 4e-9, 1e-4] {
-                close(injected(&bare_contact(beta, r_f, r_n)), one_contact(beta, r_f, r_n), 1e-13);
+                close(
+                    injected(&bare_contact(beta, r_f, r_n)),
+                    one_contact(beta, r_f, r_n),
+                    1e-13,
+                );
                 compared += 1;
             }
         }
@@ -84,8 +88,16 @@ fn two_contacts_over_a_sweep_and_all_rows() {
         for exponent in -8..=2 {
             let s = 10_f64.powi(exponent);
             let device = channel(beta, s);
-            close(polarization(&device, 0, State::Parallel), two_contacts(beta, s), 1e-10);
-            close(device.magnetoresistance().si(), two_contacts_mr(beta, s), 1e-10);
+            close(
+                polarization(&device, 0, State::Parallel),
+                two_contacts(beta, s),
+                1e-10,
+            );
+            close(
+                device.magnetoresistance().si(),
+                two_contacts_mr(beta, s),
+                1e-10,
+            );
             compared += 1;
         }
     }
@@ -97,12 +109,24 @@ fn channel_of_finite_length() {
     let build = |beta: f64, r_f: f64, r_n: f64, lambda: f64, t: f64| {
         // Two halves, so that the middle is a face.
         let half = normal(r_n, lambda, 0.5 * t / lambda);
-        stack(thick_ferromagnet(r_f, beta, Fixed), &[half, half], thick_ferromagnet(r_f, beta, Free))
+        stack(
+            thick_ferromagnet(r_f, beta, Fixed),
+            &[half, half],
+            thick_ferromagnet(r_f, beta, Free),
+        )
     };
     for (name, face, state) in [
-        ("ohmic.finite_channel_interface_parallel", 0, State::Parallel),
+        (
+            "ohmic.finite_channel_interface_parallel",
+            0,
+            State::Parallel,
+        ),
         ("ohmic.finite_channel_centre_parallel", 1, State::Parallel),
-        ("ohmic.finite_channel_interface_antiparallel", 0, State::Antiparallel),
+        (
+            "ohmic.finite_channel_interface_antiparallel",
+            0,
+            State::Antiparallel,
+        ),
     ] {
         for row in rows(name) {
             let device = build(
@@ -126,7 +150,12 @@ fn channel_of_finite_length() {
         close(p[2], parallel, 1e-13);
         let antiparallel = currents(&device.solve(State::Antiparallel));
         // Here the two magnets work against each other: the error is one of what each does alone.
-        within(antiparallel[0], beta * r_f / (r_f + r_n / half.tanh()), parallel, 1e-15);
+        within(
+            antiparallel[0],
+            beta * r_f / (r_f + r_n / half.tanh()),
+            parallel,
+            1e-15,
+        );
         // In the middle they cancel.
         within(antiparallel[1], 0.0, p[1], 1e-15);
     }

@@ -22,7 +22,13 @@ fn table(value: &Value) -> Vec<Vec<f64>> {
             line.as_array()
                 .unwrap()
                 .iter()
-                .map(|n| if n.is_null() { f64::INFINITY } else { text_number(n) })
+                .map(|n| {
+                    if n.is_null() {
+                        f64::INFINITY
+                    } else {
+                        text_number(n)
+                    }
+                })
                 .collect()
         })
         .collect()
@@ -54,7 +60,12 @@ fn five_layers_without_symmetry() {
 }
 
 /// N bilayers F/N with alternate magnets free; at both ends the two channels meet (u = 0).
-fn multilayer(bilayers: usize, (beta, rho_star, t_f): (f64, f64, f64), (r_b, gamma): (f64, f64), lambda: f64) -> Stack {
+fn multilayer(
+    bilayers: usize,
+    (beta, rho_star, t_f): (f64, f64, f64),
+    (r_b, gamma): (f64, f64),
+    lambda: f64,
+) -> Stack {
     let rho_f = rho_star * (1.0 - beta) * (1.0 + beta);
     let mut elements = Vec::new();
     for i in 0..bilayers {
@@ -75,24 +86,40 @@ fn two_current_series_resistor() {
         let bilayers = 20;
         close(row.input("bilayers"), 20.0, 0.0);
         let magnet = (row.input("beta"), row.input("rho_star"), row.input("t_F"));
-        let device = multilayer(bilayers, magnet, (row.input("r_b"), row.input("gamma")), 1.0);
+        let device = multilayer(
+            bilayers,
+            magnet,
+            (row.input("r_b"), row.input("gamma")),
+            1.0,
+        );
         let root = (change(&device) * resistance(&device, State::Antiparallel)).sqrt();
         // Corrections of order (t/λ)·r/r: below 1e-12 at λ = 1 m.
         row.check(root, 1e-12);
         // It is a law of long λ: with λ of the order of the layers it fails by far.
-        let short = multilayer(bilayers, magnet, (row.input("r_b"), row.input("gamma")), 1e-8);
+        let short = multilayer(
+            bilayers,
+            magnet,
+            (row.input("r_b"), row.input("gamma")),
+            1e-8,
+        );
         let root = (change(&short) * resistance(&short, State::Antiparallel)).sqrt();
         assert!(root < 0.9 * row.computed, "{root:e}");
     }
-    for (bilayers, beta, gamma, r_b, t_f) in
-        [(2, 0.3, 0.9, 1e-16, 1e-9), (6, -0.4, 0.77, 5e-16, 6e-9), (50, 0.7, -0.1, 2e-15, 3e-9)]
-    {
+    for (bilayers, beta, gamma, r_b, t_f) in [
+        (2, 0.3, 0.9, 1e-16, 1e-9),
+        (6, -0.4, 0.77, 5e-16, 6e-9),
+        (50, 0.7, -0.1, 2e-15, 3e-9),
+    ] {
         let rho_star = 1e-7;
         let device = multilayer(bilayers, (beta, rho_star, t_f), (r_b, gamma), 1.0);
         let root = (change(&device) * resistance(&device, State::Antiparallel)).sqrt();
         #[allow(clippy::cast_precision_loss)]
         let n = bilayers as f64;
-        close(root, (n * (beta * rho_star * t_f + 2.0 * gamma * r_b)).abs(), 1e-10);
+        close(
+            root,
+            (n * (beta * rho_star * t_f + 2.0 * gamma * r_b)).abs(),
+            1e-10,
+        );
     }
 }
 
@@ -127,7 +154,12 @@ fn ends_of_a_magnet() {
             close_at(&what, polarization(&left, 1, State::Parallel), p, 1e-13);
             // u on the near side is what the current does to the channel: J·r_N, up on the right of a magnet.
             let u = left.solve(State::Parallel).faces[1].accumulation_per_current_density;
-            close_at(&what, injectance::quantities::dimensions::Measured::si(u), p * r_n, 1e-13);
+            close_at(
+                &what,
+                injectance::quantities::dimensions::Measured::si(u),
+                p * r_n,
+                1e-13,
+            );
             // The same from the other side.
             let right = stack(thick_normal(r_n), &[element], end);
             close_at(&what, polarization(&right, 0, State::Parallel), p, 1e-13);
