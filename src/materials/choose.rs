@@ -149,6 +149,11 @@ pub enum NotChosen {
     WhichDoping(Vec<f64>),
 }
 
+/// Whether a record of temperature `t` applies at `wanted`: within ±10 % of its own temperature.
+fn applies_at(t: f64, wanted: f64) -> bool {
+    (t - wanted).abs() <= TEMPERATURE_REACH * t * (1.0 + 1e-12)
+}
+
 fn beyond(x: f64, reach: f64) -> f64 {
     if x <= reach { 0.0 } else { x }
 }
@@ -167,9 +172,13 @@ struct Rank {
 }
 
 fn rank(common: &Common, bound: bool, wanted: &Wanted, order: usize) -> Rank {
+    // Distances of temperature are ratios: 10 K is nearer to 20 K than 300 K is.
     let fine_temperature = common
         .temperature
-        .map_or(0.0, |t| (t - wanted.temperature).abs() / t);
+        .map_or(0.0, |t| (t / wanted.temperature).ln().abs());
+    let in_reach = common
+        .temperature
+        .is_none_or(|t| applies_at(t, wanted.temperature));
     let fine_doping = match (&common.conditions.doping, wanted.doping) {
         (Some(r), Some(w)) => (r.si / w).ln().abs(),
         (None, Some(_)) => 20.0,
@@ -182,7 +191,7 @@ fn rank(common: &Common, bound: bool, wanted: &Wanted, order: usize) -> Rank {
     };
     Rank {
         doping: beyond(fine_doping, DOPING_REACH.ln() * (1.0 + 1e-12)),
-        temperature: beyond(fine_temperature, TEMPERATURE_REACH * (1.0 + 1e-12)),
+        temperature: if in_reach { 0.0 } else { fine_temperature },
         own: !common.from_user,
         bound,
         dopant,
@@ -229,7 +238,7 @@ fn marks_of(common: &Common, wanted: &Wanted) -> Vec<Mark> {
         Obtained::Read | Obtained::MeasuredHere => {}
     }
     if let Some(t) = common.temperature {
-        if (t - wanted.temperature).abs() > TEMPERATURE_REACH * t * (1.0 + 1e-12) {
+        if !applies_at(t, wanted.temperature) {
             marks.push(Mark::OtherTemperature {
                 record: t,
                 wanted: wanted.temperature,

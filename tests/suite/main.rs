@@ -1,5 +1,6 @@
 //! The test suite: one binary, one module a question.
 
+mod answers;
 mod bare;
 mod command;
 mod common_practice;
