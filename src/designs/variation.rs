@@ -4,7 +4,7 @@ use crate::documents::fault::{Fault, Wrong};
 use crate::documents::overlay::{Setting, read_setting};
 use crate::documents::tree::{Node, Value};
 use crate::quantities::kind::{self, Kind};
-use crate::quantities::text::read_interval;
+use crate::quantities::text::{ReadFaultKind, read_interval};
 
 /// How points are spaced.
 #[derive(Clone, Copy, PartialEq, Eq, Debug)]
@@ -149,7 +149,13 @@ pub fn read_variation(
     let interval = read_interval(range, kind).map_err(|f| Fault {
         place: Some(setting.node.inside(f.at.clone())),
         field: setting.path.join("."),
-        wrong: Wrong::quantity(f, kind),
+        wrong: match &f.what {
+            ReadFaultKind::Spread { reason } => Wrong::Conflict {
+                reason: format!("the range is not accepted: {reason}"),
+                help: Some("write the lower end, two dots, the higher end and the unit once, for example \"1 .. 1e4 Ω µm²\"".to_owned()),
+            },
+            _ => Wrong::quantity(f, kind),
+        },
     })?;
     let number = |t: &str| t.replace(['\u{2212}'], "-").parse::<f64>().ok();
     let (Some(low), Some(high)) = (number(&interval.low_text), number(&interval.high_text)) else {
