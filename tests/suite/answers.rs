@@ -134,6 +134,25 @@ fn a_goal_between_two_values_is_found_on_both_sides_of_a_zero() {
     }
 }
 
+/// A goal that only the zero itself meets: |p| ≤ 10⁻¹⁴ % holds where β r_F + γ r_b* vanishes and in no wider
+/// neighbourhood than 2·10⁻¹⁰ of it.
+#[test]
+fn a_zero_is_found_however_narrow_its_neighbourhood() {
+    let doc = json(&one_contact("-0.5", "1 Ω µm²", "<= 1e-14 %"), &[]);
+    let intervals = doc["goals"][0]["window"]["intervals"]
+        .as_array()
+        .unwrap()
+        .clone();
+    assert_eq!(intervals.len(), 1, "{intervals:?}");
+    let zero = product_at(0.0, -0.5);
+    let (low, high) = (value(&intervals[0]["low"]), value(&intervals[0]["high"]));
+    close_at("around the zero", 0.5 * (low + high), zero, 1e-7);
+    assert!(
+        low < high && (high - low) / zero < 1e-7,
+        "{low:e} .. {high:e}"
+    );
+}
+
 #[test]
 fn an_upper_goal_has_an_upper_edge_and_asks_for_no_half_metal() {
     let doc = json(&one_contact("0.5", "1 Ω µm²", "<= 10 %"), &[]);
@@ -418,6 +437,13 @@ fn the_short_answer_never_floods() {
         let lines: Vec<&str> = out.lines().collect();
         assert!(lines.len() <= 24, "{} lines:\n{out}", lines.len());
         assert!(lines.iter().all(|l| l.chars().count() <= 80), "{out}");
+        // Even at the narrowest width, where rows wrap more.
+        let (_, out, _) = run(&design, &["--width", "60"]);
+        assert!(
+            out.lines().count() <= 24,
+            "{} lines:\n{out}",
+            out.lines().count()
+        );
         seen += 1;
     }
     assert_eq!(seen, 3);
