@@ -111,6 +111,7 @@ pub(super) const SYMBOLS: &[Symbol] = &[
     decimal("angstrom", LENGTH, -10, Never),
     decimal("Angstrom", LENGTH, -10, Never),
     decimal("angstroms", LENGTH, -10, Never),
+    decimal("cc", [3, 0, 0, 0, 0, 0, 0], -6, Never),
     ohm("ohm"),
     ohm("Ohm"),
     ohm("ohms"),

@@ -196,10 +196,22 @@ impl Parser<'_> {
             {
                 self.pos += c.len_utf8();
                 self.skip_spaces();
+            } else if self.pos == before && self.joins_ohm() {
+                self.pos += 1;
             } else if self.pos == before {
                 return Err(self.unexpected("write a space or · between two units"));
             }
         }
+    }
+
+    /// Whether a hyphen joins an ohm to the unit behind it: "ohm-cm" is written everywhere, and a power, which
+    /// the hyphen could also begin, has a digit there.
+    fn joins_ohm(&self) -> bool {
+        let before = &self.text[..self.pos];
+        let ohm = ["ohm", "Ohm", "\u{3a9}", "\u{2126}"]
+            .iter()
+            .any(|o| before.ends_with(o));
+        ohm && self.peek() == Some('-') && self.peek_after('-').is_some_and(in_symbol)
     }
 
     /// What the slash divides by: one symbol or one bracket.

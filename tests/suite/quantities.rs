@@ -79,11 +79,11 @@ fn every_spelling_of_a_unit_gives_the_same_unit() {
     let groups: &[(&str, &[&str])] = &[
         ("cm^2/(V s)", &["cm²/(V s)", "cm2/(V s)", "cm**2/(V*s)", "cm² V⁻¹ s⁻¹", "cm^2 V^-1 s^-1",
             "cm^2·V^(-1)·s^(-1)", "cm²⋅V-1⋅s-1", "cm2×V**-1×s−1", "cm² / (V·s)", " cm²/( V s ) "]),
-        ("cm^-3", &["/cm^3", "1/cm^3", "/cm³", "cm-3", "cm⁻³", "cm**-3", "cm^(-3)", "cm−3", "1 / cm3", "cm^−3"]),
+        ("cm^-3", &["/cm^3", "1/cm^3", "/cm³", "cm-3", "cm⁻³", "cm**-3", "cm^(-3)", "cm−3", "1 / cm3", "cm^−3", "/cc"]),
         ("um^2", &["µm²", "μm²", "um2", "µm^2", "µm**2", "μm^(2)"]),
         ("Ohm", &["Ω", "\u{2126}", "ohm", "ohms", "Ohms"]),
         ("Å", &["\u{212b}", "A\u{30a}", "angstrom", "Angstrom"]),
-        ("Ω cm", &["Ωcm", "ohm cm", "Ω·cm", "Ohm*cm", "\u{2126}cm"]),
+        ("Ω cm", &["Ωcm", "ohm cm", "Ω·cm", "Ohm*cm", "ohm-cm", "Ω-cm", "\u{2126}cm"]),
         ("kΩ µm²", &["kΩµm²", "kΩμm^2", "kohm um2", "kOhm µm²", "µm² kΩ", "kΩ·µm²"]),
         ("mΩ cm", &["mΩcm", "mohm cm"]),
         ("MΩ", &["Mohm", "MOhm", "MΩ/sq", "MΩ/□", "Mohm sq^-1"]),
