@@ -84,18 +84,22 @@ pub fn with_spread(si: f64, spread: &Spread, scale: Scale) -> String {
         ladder: ladder(scale),
         percent: scale == Scale::Percent,
     };
+    // A spread that leaves the range of a number in the printed unit is told as none.
+    let fits = |x: f64| (x / printer.ladder.base).is_finite();
     match *spread {
-        Spread::Normal { sd } if is_size(sd) => printer.normal(si, sd),
+        Spread::Normal { sd } if is_size(sd) && fits(sd) => printer.normal(si, sd),
         Spread::Asymmetric { minus, plus }
             if (is_size(minus) && plus >= 0.0 || is_size(plus) && minus >= 0.0)
-                && (minus + plus).is_finite() =>
+                && fits(minus + plus) =>
         {
             printer.sides(si, minus, plus)
         }
         Spread::LogNormal { factor } if factor > 1.0 && factor.is_finite() && si > 0.0 => {
             printer.factor(si, factor)
         }
-        Spread::Uniform { low, high } if low < high && (high - low).is_finite() => {
+        Spread::Uniform { low, high }
+            if low < high && fits(high - low) && fits(low) && fits(high) =>
+        {
             printer.interval(low, high)
         }
         Spread::Bound { side: Side::Above } => format!("> {}", printer.exact(si)),
