@@ -3,7 +3,7 @@
 //! Explicit designs are compared with closed forms solved by hand here; designs of library materials with
 //! the rules of choosing.
 
-#![allow(clippy::unwrap_used)]
+#![allow(clippy::unwrap_used, clippy::panic)]
 
 use assert_cmd::Command;
 use serde_json::Value;
