@@ -23,7 +23,7 @@ pub fn area(si: f64) -> String {
     result(si, Scale::ResistanceArea)
 }
 
-/// Several resistance-area products that belong together, in one unit where they lie within five decades.
+/// Several resistance-area products that belong together, in one unit where they lie within three decades.
 #[must_use]
 pub fn areas(all: &[f64]) -> Vec<String> {
     let sizes: Vec<f64> = all
@@ -33,7 +33,7 @@ pub fn areas(all: &[f64]) -> Vec<String> {
         .collect();
     let low = sizes.iter().copied().fold(f64::INFINITY, f64::min);
     let high = sizes.iter().copied().fold(0.0, f64::max);
-    if !(low.is_finite() && high / low < 1e5) {
+    if !(low.is_finite() && high / low < 1e3) {
         return all.iter().map(|x| area(*x)).collect();
     }
     // The unit of the geometric middle keeps both ends readable.

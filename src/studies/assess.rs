@@ -251,7 +251,8 @@ fn rule_of_thumb(
     wish: Wish,
     mismatch: Option<&Mismatch>,
 ) -> Option<[ResistanceAreaProduct; 2]> {
-    let m = mismatch.filter(|m| m.r_interface.si() > 0.0)?;
+    // Both contacts have a resistance exactly where a dwell time is told.
+    let m = mismatch.filter(|m| m.dwell.is_some())?;
     let t = m.reduced_length.filter(|t| *t < 1.0)?;
     let applies =
         wish.target == Target::Magnetoresistance && design.written == Written::TwoContacts;
