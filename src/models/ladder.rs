@@ -178,75 +178,47 @@ pub struct Sides {
 }
 
 fn rung_of(element: &Element) -> Rung {
-    match element {
+    let (coefficients, resistance, asymmetry, magnetization) = match element {
         Element::Layer(layer) => {
             let t = layer.thickness.si() / layer.length.si();
-            let r = layer.spin_resistance().si();
-            Rung {
-                resistance: layer.resistivity.si() * layer.thickness.si(),
-                ..layer_rung(r, t, layer.asymmetry.si(), layer.magnetization)
-            }
+            (
+                coefficients(layer.spin_resistance().si(), t),
+                layer.resistivity.si() * layer.thickness.si(),
+                layer.asymmetry.si(),
+                layer.magnetization,
+            )
         }
         Element::Interface(interface) => {
             let r_b = interface.spin_resistance.si();
-            let gamma = interface.asymmetry.si();
             let delta = interface.memory_loss.si();
-            let rung = if delta > 0.0 && r_b > 0.0 {
-                layer_rung(r_b / delta, delta, gamma, interface.magnetization)
-            } else {
-                Rung {
-                    series: r_b,
-                    shunt: 0.0,
-                    pass: 1.0,
-                    reach: 0.5 * r_b,
-                    ..layer_rung(1.0, 0.0, gamma, interface.magnetization)
-                }
-            };
-            Rung {
-                resistance: interface
+            (
+                if delta > 0.0 && r_b > 0.0 {
+                    coefficients(r_b / delta, delta)
+                } else {
+                    [r_b, 0.0, 1.0, 0.5 * r_b]
+                },
+                interface
                     .spin_resistance
                     .resistance_area(interface.asymmetry)
                     .si(),
-                reduced: delta,
-                ..rung
-            }
+                interface.asymmetry.si(),
+                interface.magnetization,
+            )
         }
-    }
+    };
+    Rung::new(
+        coefficients,
+        resistance,
+        asymmetry * magnetization.sign(),
+        magnetization == Magnetization::Free,
+    )
 }
 
-/// Rung of a layer of spin resistance `r` and reduced thickness `t`, its resistance left 0.
+/// The coefficients of a layer of spin resistance `r` and reduced thickness `t`.
 #[inline]
-fn layer_rung(r: f64, t: f64, asymmetry: f64, magnetization: Magnetization) -> Rung {
+fn coefficients(r: f64, t: f64) -> [f64; 4] {
     let f = reduced(t);
-    Rung {
-        series: r * f.tanh,
-        shunt: f.tanh * r.recip(),
-        pass: f.sech,
-        reach: r * f.half_tanh,
-        asymmetry: asymmetry * magnetization.sign(),
-        turns: magnetization == Magnetization::Free,
-        resistance: 0.0,
-        reduced: t,
-    }
-}
-
-/// (u_right − u_left)/j over a rung driven with asymmetry `own`.
-///
-/// The same number has two forms: the difference itself, and reach·(2·own − p_left − p_right), which is what
-/// the diffusion equation makes of it. The first loses digits where u hardly changes (a layer much thinner
-/// than λ), the second where the current already has the polarization of the layer and `reach` is large
-/// (β near 1). Each subtracts at the size of its terms, so the form with the smaller terms is taken; near a
-/// tie it is the second, because u, a product with a resistance, runs out of exponent before J does.
-fn rise(rung: &Rung, own: f64, left: At, right: At) -> f64 {
-    let by_current = rung.reach * (2.0 * own.abs() + left.current.abs() + right.current.abs());
-    let by_accumulation = left.accumulation.abs() + right.accumulation.abs();
-    let from_current = rung.reach * ((own - left.current) + (own - right.current));
-    let from_accumulation = right.accumulation - left.accumulation;
-    if by_current <= 4.0 * by_accumulation {
-        from_current
-    } else {
-        from_accumulation
-    }
+    [r * f.tanh, f.tanh * r.recip(), f.sech, r * f.half_tanh]
 }
 
 impl Stack {
@@ -266,11 +238,7 @@ impl Stack {
             }
         }
         let rungs = elements.iter().map(rung_of).collect();
-        let mut stack = Self { left, right, rungs };
-        for k in [stack.fed(true), stack.fed(false)].into_iter().flatten() {
-            stack.rungs[k].resistance = 0.0;
-        }
-        Ok(stack)
+        Ok(Self { left, right, rungs })
     }
 
     /// Number of elements.
@@ -286,21 +254,15 @@ impl Stack {
     }
 
     /// Ratio form of an end whose source is weighed by `weight(asymmetry, turns)`.
-    fn end(
-        &self,
-        end: &End,
-        outermost: Option<usize>,
-        weight: impl Fn(f64, bool) -> f64,
-    ) -> Passed {
-        match end {
+    fn end(&self, left: bool, weight: impl Fn(f64, bool) -> f64) -> Passed {
+        let asymmetry = self.outer_asymmetry(left, weight);
+        match if left { &self.left } else { &self.right } {
             End::SemiInfinite(layer) => {
                 let r = layer.spin_resistance().si();
-                let turns = layer.magnetization == Magnetization::Free;
-                let beta = weight(layer.asymmetry.si() * layer.magnetization.sign(), turns);
                 Passed {
                     num: r,
                     den: 1.0,
-                    src: beta * r,
+                    src: asymmetry * r,
                 }
             }
             End::SpinSink => Passed {
@@ -308,55 +270,92 @@ impl Stack {
                 den: 1.0,
                 src: 0.0,
             },
-            End::Reflecting => Passed {
+            End::Reflecting | End::FedInPlane => Passed {
                 num: 1.0,
                 den: 0.0,
-                src: 0.0,
+                src: asymmetry,
             },
-            End::FedInPlane => {
-                let src = outermost.map_or(0.0, |i| {
-                    weight(self.rungs[i].asymmetry, self.rungs[i].turns)
-                });
-                Passed {
-                    num: 1.0,
-                    den: 0.0,
-                    src,
-                }
-            }
         }
     }
 
-    /// Faces of the stack with the sources weighed by `weight(asymmetry, turns)`.
-    fn driven(&self, weight: impl Fn(f64, bool) -> f64 + Copy) -> Vec<At> {
-        let last = self.rungs.len().checked_sub(1);
-        let left = self.end(&self.left, last.map(|_| 0), weight);
-        let right = self.end(&self.right, last, weight);
-        let mut faces = sweep(left, right, &self.rungs, |rung| {
-            weight(rung.asymmetry, rung.turns)
-        });
+    /// Faces of the stack with the sources weighed by `drive`, and the sum over everything of what `ohmic`
+    /// makes of its resistance plus (u_right − u_left)/j weighed by `read`; the potentials are that sum from
+    /// the right end on. A weight is a factor for what stays and one for what turns.
+    fn swept(&self, drive: [f64; 2], read: [f64; 2], ohmic: impl Fn(f64) -> f64) -> (Vec<At>, f64) {
+        // Turned in sign by the factors: turned in the loop, the compiler would turn it back (`Passed::after`).
+        let (driven, driven_against) = (Self::weighed(drive), Self::weighed(drive.map(|f| -f)));
+        let (read, read_against) = (Self::weighed(read), Self::weighed(read.map(|f| -f)));
+        let mut ends = [self.end(true, driven), self.end(false, driven)];
+        let driven = |rung: &Rung| driven(rung.asymmetry, rung.turns());
+        let against = |rung: &Rung| driven_against(rung.asymmetry, rung.turns());
+        let across = |rung: &Rung, against: f64, left: At, right: At| {
+            read_against(rung.asymmetry, rung.turns()) * rung.fall(against, left, right)
+        };
         // At the far face of a strip fed in its plane u' = 0, so that u there is u of the near face times
-        // sech(t/λ); what the sweep gives there is the difference of two terms of the size of βr·coth(t/λ).
-        for (fed, outer, inner) in [
-            (self.fed(true), 0, 1),
-            (
-                self.fed(false),
-                self.rungs.len(),
-                self.rungs.len().saturating_sub(1),
-            ),
-        ] {
-            if let Some(k) = fed {
-                faces[outer] = At {
-                    current: weight(self.rungs[k].asymmetry, self.rungs[k].turns),
-                    accumulation: faces[inner].accumulation * self.rungs[k].pass,
-                    potential: 0.0,
-                };
-            }
-        }
-        if self.rungs.len() == 1 && self.fed(true).is_some() && self.fed(false).is_some() {
+        // sech(t/λ); what a sweep gives there is the difference of two terms of the size of βr·coth(t/λ).
+        let far = |rung: &Rung, near: At| At {
+            current: driven(rung),
+            accumulation: near.accumulation * rung.pass,
+            potential: 0.0,
+        };
+        let mut between = self.rungs.as_slice();
+        let mut faces = Vec::with_capacity(between.len() + 1);
+        let (fed_left, fed_right) = (self.strip(true), self.strip(false));
+        if let (Some(one), Some(_), [_]) = (fed_left, fed_right, between) {
             // u' = 0 at both faces of one layer leaves no accumulation at all.
-            faces.iter_mut().for_each(|face| face.accumulation = 0.0);
+            faces.resize(
+                2,
+                At {
+                    current: driven(one),
+                    accumulation: 0.0,
+                    potential: 0.0,
+                },
+            );
+            return (faces, 0.0);
         }
-        faces
+        if let Some(strip) = fed_left {
+            faces.push(At {
+                current: 0.0,
+                accumulation: 0.0,
+                potential: 0.0,
+            });
+            ends[0] = ends[0].after(strip, against(strip));
+            between = between.get(1..).unwrap_or_default();
+        }
+        if let Some(strip) = fed_right {
+            ends[1] = ends[1].after(strip, against(strip));
+            between = between.split_last().map_or(between, |(_, rest)| rest);
+        }
+        let [out_left, out_right] = [true, false].map(|left| self.outer_asymmetry(left, read));
+        let mut outermost = None;
+        sweep(
+            &mut faces,
+            ends[0],
+            ends[1],
+            between,
+            against,
+            |near| match fed_right {
+                None => ohmic(Self::outer_resistance(&self.right)) - out_right * near.accumulation,
+                Some(strip) => {
+                    let mut end = far(strip, near);
+                    end.potential = -out_right * end.accumulation;
+                    outermost = Some(end);
+                    end.potential + across(strip, against(strip), near, end)
+                }
+            },
+            |rung, against, left, right| {
+                ohmic(rung.resistance()) + across(rung, against, left, right)
+            },
+        );
+        faces.extend(outermost);
+        if let (Some(strip), [end, near, ..]) = (fed_left, faces.as_mut_slice()) {
+            *end = far(strip, *near);
+            end.potential = near.potential + across(strip, against(strip), *end, *near);
+        }
+        let sum = faces.first().map_or(0.0, |end| {
+            ohmic(Self::outer_resistance(&self.left)) + out_left * end.accumulation + end.potential
+        });
+        (faces, sum)
     }
 
     /// The asymmetry of what lies at an end and takes part in RA beyond the outermost face: the end medium
@@ -367,24 +366,24 @@ impl Stack {
                 layer.asymmetry.si() * layer.magnetization.sign(),
                 layer.magnetization == Magnetization::Free,
             ),
-            End::FedInPlane => self.fed(left).map_or(0.0, |k| {
-                weight(self.rungs[k].asymmetry, self.rungs[k].turns)
-            }),
+            End::FedInPlane => self
+                .strip(left)
+                .map_or(0.0, |rung| weight(rung.asymmetry, rung.turns())),
             End::SpinSink | End::Reflecting => 0.0,
         }
     }
 
-    fn weight(state: State) -> impl Fn(f64, bool) -> f64 + Copy {
+    /// The weight of what stays and of what turns.
+    fn weight(state: State) -> [f64; 2] {
         match state {
-            State::Parallel => Self::weighed(1.0, 1.0),
-            State::Antiparallel => Self::weighed(1.0, -1.0),
+            State::Parallel => [1.0, 1.0],
+            State::Antiparallel => [1.0, -1.0],
         }
     }
 
-    /// Weighs an asymmetry by one factor if it stays and by another if it turns. A look-up, not a branch:
-    /// in a long stack nobody can guess which magnets turn.
-    fn weighed(stays: f64, turns: f64) -> impl Fn(f64, bool) -> f64 + Copy {
-        let factors = [stays, turns];
+    /// Weighs an asymmetry by the first factor if it stays and by the second if it turns. A look-up, not a
+    /// branch: in a long stack nobody can guess which magnets turn.
+    fn weighed(factors: [f64; 2]) -> impl Fn(f64, bool) -> f64 + Copy {
         move |asymmetry, turned| asymmetry * factors[usize::from(turned)]
     }
 
@@ -395,23 +394,7 @@ impl Stack {
     #[must_use]
     pub fn solve(&self, state: State) -> Solution {
         let weight = Self::weight(state);
-        let mut faces = self.driven(weight);
-        let first = faces.first().map_or(0.0, |f| f.accumulation);
-        let last = faces.last().map_or(0.0, |f| f.accumulation);
-        let outer_left =
-            Self::outer_resistance(&self.left) + self.outer_asymmetry(true, weight) * first;
-        let outer_right =
-            Self::outer_resistance(&self.right) - self.outer_asymmetry(false, weight) * last;
-        let mut potential = outer_right;
-        let mut right: Option<At> = None;
-        for (k, at) in faces.iter_mut().enumerate().rev() {
-            if let (Some(rung), Some(right)) = (self.rungs.get(k), right) {
-                let a = weight(rung.asymmetry, rung.turns);
-                potential += rung.resistance + a * rise(rung, a, *at, right);
-            }
-            at.potential = potential;
-            right = Some(*at);
-        }
+        let (faces, sum) = self.swept(weight, weight, |resistance| resistance);
         let face = |at: At| Face {
             polarization: CurrentSpinPolarization::from_si(at.current),
             accumulation_per_current_density: ResistanceTimesArea::from_si(at.accumulation),
@@ -419,18 +402,19 @@ impl Stack {
         };
         Solution {
             faces: faces.into_iter().map(face).collect(),
-            resistance_area: ResistanceAreaProduct::from_si(potential + outer_left),
+            resistance_area: ResistanceAreaProduct::from_si(sum),
         }
     }
 
-    fn fed(&self, left: bool) -> Option<usize> {
-        let (end, index) = if left {
-            (&self.left, self.rungs.len().checked_sub(1).map(|_| 0))
+    /// The outermost layer on one side if it is fed in its plane.
+    fn strip(&self, left: bool) -> Option<&Rung> {
+        let (end, rung) = if left {
+            (&self.left, self.rungs.first())
         } else {
-            (&self.right, self.rungs.len().checked_sub(1))
+            (&self.right, self.rungs.last())
         };
         if matches!(end, End::FedInPlane) {
-            index
+            rung
         } else {
             None
         }
@@ -455,16 +439,8 @@ impl Stack {
     /// The two resistances, which agree in most of their digits, are never subtracted.
     #[must_use]
     pub fn resistance_area_change(&self) -> ResistanceAreaChange {
-        let (drive, read) = (Self::weighed(0.0, 1.0), Self::weighed(1.0, 0.0));
-        let faces = self.driven(drive);
-        let first = faces.first().map_or(0.0, |f| f.accumulation);
-        let last = faces.last().map_or(0.0, |f| f.accumulation);
-        let mut sum =
-            self.outer_asymmetry(true, read) * first - self.outer_asymmetry(false, read) * last;
-        for (i, rung) in self.rungs.iter().enumerate() {
-            // What reads is not driven: its own source is 0 here.
-            sum += read(rung.asymmetry, rung.turns) * rise(rung, 0.0, faces[i], faces[i + 1]);
-        }
+        // What reads is not driven, and what is driven does not read.
+        let (_, sum) = self.swept([0.0, 1.0], [1.0, 0.0], |_| 0.0);
         ResistanceAreaChange::from_si(-4.0 * sum)
     }
 
@@ -479,12 +455,10 @@ impl Stack {
     /// p = (E_left + E_right)/(Z_left + Z_right).
     #[must_use]
     pub fn sides(&self, k: usize, state: State) -> Sides {
-        let weight = Self::weight(state);
-        let last = self.rungs.len().checked_sub(1);
-        let left = self.end(&self.left, last.map(|_| 0), weight);
-        let right = self.end(&self.right, last, weight);
+        let weight = Self::weighed(Self::weight(state));
+        let (left, right) = (self.end(true, weight), self.end(false, weight));
         let (l, r) = parts_at(left, right, &self.rungs, k.min(self.rungs.len()), |rung| {
-            weight(rung.asymmetry, rung.turns)
+            -weight(rung.asymmetry, rung.turns())
         });
         // A closed end has d = 0: its impedance is infinite and it offers no source.
         let ratio = |n: f64, d: f64, closed: f64| if d > 0.0 { n / d } else { closed };
@@ -512,7 +486,7 @@ impl Stack {
             return Some(if fraction < 0.5 { *left } else { *right });
         }
         let x = fraction.clamp(0.0, 1.0);
-        let t = rung.reduced;
+        let t = rung.reduced();
         // sinh(aT)/sinh(T): what a face contributes at the distance (1 − a)t from it.
         let part = |a: f64| {
             if a <= 0.0 {
@@ -524,15 +498,17 @@ impl Stack {
             }
         };
         let (wl, wr) = (part(1.0 - x), part(x));
-        let b = Self::weight(state)(rung.asymmetry, rung.turns);
+        let b = Self::weighed(Self::weight(state))(rung.asymmetry, rung.turns());
         let (pl, pr) = (left.polarization.si(), right.polarization.si());
         let (ul, ur) = (
             left.accumulation_per_current_density.si(),
             right.accumulation_per_current_density.si(),
         );
         let u = ul * wl + ur * wr;
-        let potential =
-            left.potential_per_current_density.si() - rung.resistance * x - b * (u - ul);
+        let strip = (k == 0 && self.strip(true).is_some())
+            || (k + 1 == self.rungs.len() && self.strip(false).is_some());
+        let ohmic = if strip { 0.0 } else { rung.resistance() };
+        let potential = left.potential_per_current_density.si() - ohmic * x - b * (u - ul);
         Some(Face {
             polarization: CurrentSpinPolarization::from_si(b + (pl - b) * wl + (pr - b) * wr),
             accumulation_per_current_density: ResistanceTimesArea::from_si(u),

@@ -20,7 +20,8 @@
 //!
 //! # Cost
 //! The answer's own memory holds what lies to the left of every face until the sweep from the right
-//! arrives, so a solution costs its faces and nothing else.
+//! arrives and tells J, u and V there at once: a solution costs its faces, one pass up the stack and one
+//! down, and nothing else.
 //!
 //! # Accuracy
 //! n and d are sums of non-negative terms: nothing cancels in the impedances. Only sources of opposite
@@ -29,7 +30,8 @@
 //! # Source
 //! Valet and Fert, Phys. Rev. B 48, 7099 (1993) for the equations; the sweep in ratio form is ours.
 
-/// Coefficients of one layer or one interface.
+/// Coefficients of one layer or one interface. As few numbers as do not cost the sweep a division: what a
+/// long stack takes is the time to write and read them.
 #[derive(Clone, Copy, PartialEq, Debug)]
 pub(super) struct Rung {
     /// r·tanh T of a layer, r_b* of an interface. Ω m².
@@ -42,12 +44,72 @@ pub(super) struct Rung {
     pub reach: f64,
     /// β or γ, signed by the magnetization in the parallel state.
     pub asymmetry: f64,
+    /// What it adds to RA besides its accumulation, Ω m²; negative, down to −0, if the asymmetry turns
+    /// between the two magnetic states.
+    signed_resistance: f64,
+}
+
+impl Rung {
+    /// A rung of the given coefficients.
+    #[inline]
+    pub fn new(
+        [series, shunt, pass, reach]: [f64; 4],
+        resistance: f64,
+        asymmetry: f64,
+        turns: bool,
+    ) -> Self {
+        let signed_resistance =
+            f64::from_bits(resistance.abs().to_bits() | (u64::from(turns) << 63));
+        Self {
+            series,
+            shunt,
+            pass,
+            reach,
+            asymmetry,
+            signed_resistance,
+        }
+    }
+
     /// Whether the asymmetry turns between the two magnetic states.
-    pub turns: bool,
-    /// What it adds to RA besides its accumulation. Ω m².
-    pub resistance: f64,
-    /// T = t/λ of a layer, δ of an interface.
-    pub reduced: f64,
+    #[inline]
+    pub fn turns(&self) -> bool {
+        self.signed_resistance.is_sign_negative()
+    }
+
+    /// What it adds to RA besides its accumulation: ρt of a layer, r_b*(1 − γ²) of an interface. Ω m².
+    #[inline]
+    pub fn resistance(&self) -> f64 {
+        self.signed_resistance.abs()
+    }
+
+    /// T = t/λ of a layer, δ of an interface with loss: the resistance over r(1 − β²).
+    pub fn reduced(&self) -> f64 {
+        let spin_resistance = self.series.sqrt() / self.shunt.sqrt();
+        let across_both = (1.0 - self.asymmetry) * (1.0 + self.asymmetry);
+        self.resistance() / (spin_resistance * across_both)
+    }
+
+    /// (u_left − u_right)/j over the rung, driven with an asymmetry that is `against` with its sign turned.
+    ///
+    /// The same number has two forms: the difference itself, and reach·(2·against + p_left + p_right), which
+    /// is what the diffusion equation makes of it. The first loses digits where u hardly changes (a layer
+    /// much thinner than λ), the second where the current already has the polarization of the layer and
+    /// `reach` is large (β near 1). Each subtracts at the size of its terms, so the form with the smaller
+    /// terms is taken; near a tie it is the second, because u, a product with a resistance, runs out of
+    /// exponent before J does.
+    #[inline]
+    pub fn fall(&self, against: f64, left: At, right: At) -> f64 {
+        let by_current =
+            self.reach * (2.0 * against.abs() + left.current.abs() + right.current.abs());
+        let by_accumulation = left.accumulation.abs() + right.accumulation.abs();
+        let from_current = self.reach * ((against + left.current) + (against + right.current));
+        let from_accumulation = left.accumulation - right.accumulation;
+        if by_current <= 4.0 * by_accumulation {
+            from_current
+        } else {
+            from_accumulation
+        }
+    }
 }
 
 /// Ratio form of the part already passed: numerator and denominator of Z, and the source.
@@ -63,19 +125,18 @@ pub(super) struct Passed {
 const CEILING: f64 = 1.606_938_044_258_990_3e60; // 2^200
 
 impl Passed {
-    /// The part seen after one more rung whose asymmetry is `asymmetry` (0 where it is not driven).
+    /// The part seen after one more rung whose asymmetry, turned in sign, is `against` (0 where it is not
+    /// driven).
+    ///
+    /// Turned because a difference, here, is faster than a sum: from sums alone compilers pack the source
+    /// into one vector with the impedance, which then waits for it at every rung.
     #[inline]
-    fn after(self, rung: &Rung, asymmetry: f64) -> Self {
-        // What does not depend on the part passed is multiplied first: the chain from rung to rung is
-        // one product and one sum for the impedance, and little more for the source.
-        let (lift, bend) = (
-            asymmetry * rung.series,
-            asymmetry * (rung.reach * rung.shunt),
-        );
+    pub fn after(self, rung: &Rung, against: f64) -> Self {
+        let (series, shunt) = (rung.series * self.den, rung.shunt * self.num);
         let next = Self {
-            num: self.num + rung.series * self.den,
-            den: self.den + rung.shunt * self.num,
-            src: self.src * rung.pass + (lift * self.den + bend * self.num),
+            num: self.num + series,
+            den: self.den + shunt,
+            src: self.src * rung.pass - against * (series + rung.reach * shunt),
         };
         // Neither is negative, so the sum stands for the larger of the two.
         if next.num + next.den > CEILING {
@@ -103,31 +164,33 @@ pub(super) struct At {
     pub current: f64,
     /// u/j in the sign of the published equations, Ω m².
     pub accumulation: f64,
-    /// (V↑ + V↓)/2j, Ω m². The sweep leaves it 0; the ladder sums it up.
+    /// (V↑ + V↓)/2j, Ω m².
     pub potential: f64,
 }
 
 impl At {
     /// A face not yet told: its three numbers are those of the part to its left.
+    #[inline]
     fn holding(left: Passed) -> Self {
         Self {
-            current: left.num,
-            accumulation: left.den,
-            potential: left.src,
+            current: left.src,
+            accumulation: left.num,
+            potential: left.den,
         }
     }
 
     /// The part that [`At::holding`] put there.
+    #[inline]
     fn held(self) -> Passed {
         Passed {
-            num: self.current,
-            den: self.accumulation,
-            src: self.potential,
+            num: self.accumulation,
+            den: self.potential,
+            src: self.current,
         }
     }
 }
 
-/// J and u where two parts meet.
+/// J and u where two parts meet; V is left 0.
 #[inline]
 fn meet(left: Passed, right: Passed) -> At {
     let inverse = 1.0 / (left.num * right.den + right.num * left.den);
@@ -139,30 +202,42 @@ fn meet(left: Passed, right: Passed) -> At {
     }
 }
 
-/// J and u at every face, from the left end to the right end: `rungs.len() + 1` entries.
+/// Appends J, u and V at every face, from the left end to the right end: `rungs.len() + 1` entries.
 ///
-/// `asymmetry(rung)` gives the asymmetry with which a rung is driven; the ends carry their own source.
+/// `against(rung)` gives the asymmetry with which a rung is driven, turned in sign; the ends carry their own
+/// source. `start` tells V of the rightmost face, `drop` what V falls by over a rung, given `against` of it
+/// and its two faces.
 pub(super) fn sweep(
+    faces: &mut Vec<At>,
     left: Passed,
     right: Passed,
     rungs: &[Rung],
-    asymmetry: impl Fn(&Rung) -> f64,
-) -> Vec<At> {
+    against: impl Fn(&Rung) -> f64,
+    start: impl FnOnce(At) -> f64,
+    drop: impl Fn(&Rung, f64, At, At) -> f64,
+) {
+    let before = faces.len();
     let mut part = left;
-    let mut faces = Vec::with_capacity(rungs.len() + 1);
     // Not a loop of pushes: the call that might grow the vector would keep `part` out of registers.
     faces.extend(rungs.iter().map(|rung| {
         let here = At::holding(part);
-        part = part.after(rung, asymmetry(rung));
+        part = part.after(rung, against(rung));
         here
     }));
-    faces.push(meet(part, right));
+    let mut near = meet(part, right);
+    near.potential = start(near);
+    let last = near;
+    let (_, held) = faces.split_at_mut(before);
     let mut part = right;
-    for (rung, face) in rungs.iter().zip(&mut faces).rev() {
-        part = part.after(rung, asymmetry(rung));
-        *face = meet(face.held(), part);
+    for (rung, face) in rungs.iter().zip(held).rev() {
+        let turned = against(rung);
+        part = part.after(rung, turned);
+        let mut here = meet(face.held(), part);
+        here.potential = near.potential + drop(rung, turned, here, near);
+        *face = here;
+        near = here;
     }
-    faces
+    faces.push(last);
 }
 
 /// Impedance Z = n/d and source E = s/d of the two parts that meet at face `k`, in Ω m²: what the left
@@ -172,15 +247,15 @@ pub(super) fn parts_at(
     right: Passed,
     rungs: &[Rung],
     k: usize,
-    asymmetry: impl Fn(&Rung) -> f64,
+    against: impl Fn(&Rung) -> f64,
 ) -> (Passed, Passed) {
     let mut l = left;
     for rung in rungs.iter().take(k) {
-        l = l.after(rung, asymmetry(rung));
+        l = l.after(rung, against(rung));
     }
     let mut r = right;
     for rung in rungs.iter().skip(k).rev() {
-        r = r.after(rung, asymmetry(rung));
+        r = r.after(rung, against(rung));
     }
     (l, r)
 }
