@@ -364,13 +364,16 @@ pub fn summary(a: &Assessment, width: usize) -> Vec<String> {
     let mut lines = summary_rows(a, width);
     let room = MOST_LINES.saturating_sub(lines.len());
     let tail = lines.split_off(lines.len() - inputs_row(a, width).len());
-    lines.extend(findings_within(a, width, room));
-    lines.extend(tail);
-    if lines.len() > MOST_LINES {
-        let left = lines.len() - MOST_LINES + 1;
-        lines.truncate(MOST_LINES - 1);
+    let findings = findings_within(a, width, room);
+    // Findings and where the inputs come from are always told; what is cut is above them.
+    let most = MOST_LINES.saturating_sub(findings.len() + tail.len());
+    if lines.len() > most {
+        let left = lines.len() - most.saturating_sub(1);
+        lines.truncate(most.saturating_sub(1));
         lines.push(format!(" ! {left} more lines: see --full"));
     }
+    lines.extend(findings);
+    lines.extend(tail);
     lines
 }
 
@@ -528,7 +531,8 @@ fn findings_within(a: &Assessment, width: usize, room: usize) -> Vec<String> {
     for shown in (0..=blocks.len()).rev() {
         let mut lines: Vec<String> = blocks[..shown].iter().flatten().cloned().collect();
         if shown < blocks.len() {
-            let names: Vec<&str> = untold[shown..].iter().map(|f| f.rule_name()).collect();
+            let mut names: Vec<&str> = untold[shown..].iter().map(|f| f.rule_name()).collect();
+            names.dedup();
             let text = format!("{} more in --full: {}", names.len(), names.join(", "));
             lines.extend(marked(" !", &text, width));
         }

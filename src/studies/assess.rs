@@ -214,7 +214,12 @@ pub fn assess(
         faces: [parallel.faces, antiparallel.faces],
         resistance_area: [parallel.resistance_area, antiparallel.resistance_area],
         told_at: told_at(device.current_density, parallel.resistance_area),
-        rule_of_thumb: rule_of_thumb(design, wish, mismatch.as_ref()),
+        rule_of_thumb: rule_of_thumb(
+            design,
+            wish,
+            mismatch.as_ref(),
+            goals.first().map(|g| &g.window).or(default_window.as_ref()),
+        ),
         mismatch,
         wish,
         goals,
@@ -250,13 +255,17 @@ fn rule_of_thumb(
     design: &Design,
     wish: Wish,
     mismatch: Option<&Mismatch>,
+    window: Option<&Result<Window, NoWindow>>,
 ) -> Option<[ResistanceAreaProduct; 2]> {
-    // Both contacts have a resistance exactly where a dwell time is told.
-    let m = mismatch.filter(|m| m.dwell.is_some())?;
+    let m = mismatch?;
     let t = m.reduced_length.filter(|t| *t < 1.0)?;
-    let applies =
-        wish.target == Target::Magnetoresistance && design.written == Written::TwoContacts;
-    let g = m.asymmetry.si();
+    let Some(Ok(window)) = window else {
+        return None;
+    };
+    let applies = wish.target == Target::Magnetoresistance
+        && design.written == Written::TwoContacts
+        && window.contacts.len() == 2;
+    let g = window.asymmetry.si();
     let ra = (1.0 - g) * (1.0 + g) * m.r_channel.si();
     applies.then(|| {
         [

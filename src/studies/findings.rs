@@ -324,5 +324,7 @@ impl Finding {
 #[must_use]
 pub fn ordered(mut findings: Vec<Finding>) -> Vec<Finding> {
     findings.sort_by_key(Finding::order);
+    // Two contacts of one kind say the same thing once.
+    findings.dedup();
     findings
 }

@@ -388,6 +388,15 @@ fn the_shares_are_those_of_the_closed_form() {
 }
 
 #[test]
+fn a_conductivity_is_one_over_a_resistivity() {
+    let design = one_contact("0.5", "4 kΩ µm²", ">= 10 %");
+    let other = design.replace("resistivity = \"2 mΩ m\"", "conductivity = \"500 S/m\"");
+    assert_ne!(design, other);
+    let p = |d: &str| value(&json(d, &[])["injected_polarization"]);
+    close_at("p", p(&other), p(&design), 1e-15);
+}
+
+#[test]
 fn one_record_in_two_places_moves_at_once() {
     let text = std::fs::read_to_string(
         std::path::Path::new(env!("CARGO_MANIFEST_DIR")).join("designs-demo/thick-barriers.toml"),
