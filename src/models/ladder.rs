@@ -30,7 +30,6 @@
 //! 1e-12 of itself unless its own terms cancel. Checked in tests/suite/outside/stacks.rs against 60-digit
 //! solutions.
 
-use crate::numerics::hyperbolic::reduced;
 use crate::quantities::dimensions::{ElectricalResistivity, Measured, ResistanceTimesArea};
 use crate::quantities::meanings::{
     BulkAsymmetry, CurrentSpinPolarization, InterfaceAsymmetry, InterfaceSpinResistance,
@@ -38,7 +37,7 @@ use crate::quantities::meanings::{
     SpinMemoryLoss, SpinResistance, Thickness,
 };
 
-use super::sweep::{At, Passed, Rung, parts_at, sweep};
+use super::sweep::{At, Passed, Rung, coefficients, parts_at, sweep};
 
 /// How a magnetization stands, and whether it turns between the two magnetic states of the stack.
 #[derive(Clone, Copy, PartialEq, Eq, Debug)]
@@ -214,13 +213,6 @@ fn rung_of(element: &Element) -> Rung {
     )
 }
 
-/// The coefficients of a layer of spin resistance `r` and reduced thickness `t`.
-#[inline]
-fn coefficients(r: f64, t: f64) -> [f64; 4] {
-    let f = reduced(t);
-    [r * f.tanh, f.tanh * r.recip(), f.sech, r * f.half_tanh]
-}
-
 impl Stack {
     /// Builds a stack.
     ///
@@ -256,33 +248,23 @@ impl Stack {
     /// Ratio form of an end whose source is weighed by `weight(asymmetry, turns)`.
     fn end(&self, left: bool, weight: impl Fn(f64, bool) -> f64) -> Passed {
         let asymmetry = self.outer_asymmetry(left, weight);
-        match if left { &self.left } else { &self.right } {
+        let (num, den, src) = match if left { &self.left } else { &self.right } {
             End::SemiInfinite(layer) => {
                 let r = layer.spin_resistance().si();
-                Passed {
-                    num: r,
-                    den: 1.0,
-                    src: asymmetry * r,
-                }
+                (r, 1.0, asymmetry * r)
             }
-            End::SpinSink => Passed {
-                num: 0.0,
-                den: 1.0,
-                src: 0.0,
-            },
-            End::Reflecting | End::FedInPlane => Passed {
-                num: 1.0,
-                den: 0.0,
-                src: asymmetry,
-            },
-        }
+            End::SpinSink => (0.0, 1.0, 0.0),
+            End::Reflecting | End::FedInPlane => (1.0, 0.0, asymmetry),
+        };
+        Passed { num, den, src }
     }
 
     /// Faces of the stack with the sources weighed by `drive`, and the sum over everything of what `ohmic`
     /// makes of its resistance plus (u_right − u_left)/j weighed by `read`; the potentials are that sum from
     /// the right end on. A weight is a factor for what stays and one for what turns.
     fn swept(&self, drive: [f64; 2], read: [f64; 2], ohmic: impl Fn(f64) -> f64) -> (Vec<At>, f64) {
-        // Turned in sign by the factors: turned in the loop, the compiler would turn it back (`Passed::after`).
+        // Turned in sign by the factors: turned in the loop, the compiler would turn it back, which costs
+        // what `Passed::after` tells.
         let (driven, driven_against) = (Self::weighed(drive), Self::weighed(drive.map(|f| -f)));
         let (read, read_against) = (Self::weighed(read), Self::weighed(read.map(|f| -f)));
         let mut ends = [self.end(true, driven), self.end(false, driven)];
@@ -293,32 +275,18 @@ impl Stack {
         };
         // At the far face of a strip fed in its plane u' = 0, so that u there is u of the near face times
         // sech(t/λ); what a sweep gives there is the difference of two terms of the size of βr·coth(t/λ).
-        let far = |rung: &Rung, near: At| At {
-            current: driven(rung),
-            accumulation: near.accumulation * rung.pass,
-            potential: 0.0,
-        };
+        let far = |rung: &Rung, near: At| At::new(driven(rung), near.accumulation * rung.pass);
         let mut between = self.rungs.as_slice();
         let mut faces = Vec::with_capacity(between.len() + 1);
         let (fed_left, fed_right) = (self.strip(true), self.strip(false));
         if let (Some(one), Some(_), [_]) = (fed_left, fed_right, between) {
             // u' = 0 at both faces of one layer leaves no accumulation at all.
-            faces.resize(
-                2,
-                At {
-                    current: driven(one),
-                    accumulation: 0.0,
-                    potential: 0.0,
-                },
-            );
+            faces.resize(2, At::new(driven(one), 0.0));
             return (faces, 0.0);
         }
         if let Some(strip) = fed_left {
-            faces.push(At {
-                current: 0.0,
-                accumulation: 0.0,
-                potential: 0.0,
-            });
+            // Told last, from the face beside it.
+            faces.push(At::new(0.0, 0.0));
             ends[0] = ends[0].after(strip, against(strip));
             between = between.get(1..).unwrap_or_default();
         }

@@ -30,6 +30,8 @@
 //! # Source
 //! Valet and Fert, Phys. Rev. B 48, 7099 (1993) for the equations; the sweep in ratio form is ours.
 
+use crate::numerics::hyperbolic::reduced;
+
 /// Coefficients of one layer or one interface. As few numbers as do not cost the sweep a division: what a
 /// long stack takes is the time to write and read them.
 #[derive(Clone, Copy, PartialEq, Debug)]
@@ -112,6 +114,13 @@ impl Rung {
     }
 }
 
+/// Series, shunt, pass and reach of a layer of spin resistance `r` and reduced thickness `t`.
+#[inline]
+pub(super) fn coefficients(r: f64, t: f64) -> [f64; 4] {
+    let f = reduced(t);
+    [r * f.tanh, f.tanh * r.recip(), f.sech, r * f.half_tanh]
+}
+
 /// Ratio form of the part already passed: numerator and denominator of Z, and the source.
 #[derive(Clone, Copy, PartialEq, Debug)]
 pub(super) struct Passed {
@@ -169,6 +178,16 @@ pub(super) struct At {
 }
 
 impl At {
+    /// A face of given J and u, its V left 0.
+    #[inline]
+    pub fn new(current: f64, accumulation: f64) -> Self {
+        Self {
+            current,
+            accumulation,
+            potential: 0.0,
+        }
+    }
+
     /// A face not yet told: its three numbers are those of the part to its left.
     #[inline]
     fn holding(left: Passed) -> Self {
@@ -194,12 +213,11 @@ impl At {
 #[inline]
 fn meet(left: Passed, right: Passed) -> At {
     let inverse = 1.0 / (left.num * right.den + right.num * left.den);
-    At {
-        current: (left.src * right.den + right.src * left.den) * inverse,
+    At::new(
+        (left.src * right.den + right.src * left.den) * inverse,
         // Turned sign: see the module text.
-        accumulation: (left.src * right.num - left.num * right.src) * inverse,
-        potential: 0.0,
-    }
+        (left.src * right.num - left.num * right.src) * inverse,
+    )
 }
 
 /// Appends J, u and V at every face, from the left end to the right end: `rungs.len() + 1` entries.
