@@ -3,6 +3,7 @@
 
 pub mod check;
 pub mod choose;
+mod entry;
 mod file;
 pub mod library;
 pub mod property;

@@ -2,7 +2,7 @@
 //!
 //! Source: tests/reference/elements.json, room-temperature resistivity as pymatgen-core gives it. The records
 //! of iron, cobalt, nickel and copper were read from that package's data file, so for them this is a check of
-//! the transcription; those of silver, aluminium and gold were read elsewhere and agree with it.
+//! the copying; those of silver, aluminium and gold were read elsewhere and agree with it.
 
 #![allow(clippy::unwrap_used)]
 
