@@ -32,6 +32,10 @@ fn file_fault(name: &str, reason: String, help: Option<&str>) -> Fault {
     }
 }
 
+fn unreadable(name: &str, error: &std::io::Error) -> Fault {
+    file_fault(name, format!("cannot be read: {}", reason(error)), None)
+}
+
 fn text_of(name: &str, bytes: Vec<u8>) -> Result<String, Fault> {
     String::from_utf8(bytes).map_err(|e| {
         let at = e.utf8_error().valid_up_to();
@@ -56,15 +60,14 @@ pub fn read_text(path: &Path) -> Result<(String, String), Fault> {
             .lock()
             .take(MOST_BYTES + 1)
             .read_to_end(&mut bytes)
-            .map_err(|e| file_fault(&name, format!("cannot be read: {e}"), None))?;
+            .map_err(|e| unreadable(&name, &e))?;
         if bytes.len() as u64 > MOST_BYTES {
             return Err(file_fault(&name, too_large(None), None));
         }
         return Ok((name.clone(), text_of(&name, bytes)?));
     }
     let name = path.display().to_string();
-    let meta = fs::metadata(path)
-        .map_err(|e| file_fault(&name, format!("cannot be read: {}", reason(&e)), None))?;
+    let meta = fs::metadata(path).map_err(|e| unreadable(&name, &e))?;
     if meta.is_dir() {
         return Err(file_fault(
             &name,
@@ -79,7 +82,7 @@ pub fn read_text(path: &Path) -> Result<(String, String), Fault> {
     let mut bytes = Vec::new();
     fs::File::open(path)
         .and_then(|f| f.take(MOST_BYTES + 1).read_to_end(&mut bytes))
-        .map_err(|e| file_fault(&name, format!("cannot be read: {}", reason(&e)), None))?;
+        .map_err(|e| unreadable(&name, &e))?;
     if bytes.len() as u64 > MOST_BYTES {
         return Err(file_fault(&name, too_large(None), None));
     }
@@ -163,11 +166,7 @@ fn collect(
     let real = match fs::canonicalize(path) {
         Ok(real) => real,
         Err(e) => {
-            faults.push(file_fault(
-                &name,
-                format!("cannot be read: {}", reason(&e)),
-                None,
-            ));
+            faults.push(unreadable(&name, &e));
             return;
         }
     };
@@ -194,11 +193,7 @@ fn collect(
     let entries = match fs::read_dir(path) {
         Ok(entries) => entries,
         Err(e) => {
-            faults.push(file_fault(
-                &name,
-                format!("cannot be read: {}", reason(&e)),
-                None,
-            ));
+            faults.push(unreadable(&name, &e));
             return;
         }
     };

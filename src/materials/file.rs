@@ -49,7 +49,7 @@ pub(super) fn read_file(root: &Node, from_user: bool, faults: &Faults) -> Option
     let content = if top.has("material") {
         read_material(&top, from_user, faults).map(|m| Content::Material(Box::new(m)))
     } else if top.has("interface") {
-        read_interface(&top, from_user, faults).map(|i| Content::Interface(Box::new(i)))
+        read_interface(&top, from_user).map(|i| Content::Interface(Box::new(i)))
     } else if top.has("prior") {
         Some(Content::Priors(read_priors(&top)))
     } else {
@@ -145,6 +145,15 @@ fn check_prior(r: &Reader<'_>, property: &str, spread: &str) {
     }
 }
 
+/// Every entry of one kind that could be read; the others are told as faults by `read`.
+fn gather<T>(
+    top: &Reader<'_>,
+    kind: &'static str,
+    read: impl Fn(&Reader<'_>) -> Option<T>,
+) -> Vec<T> {
+    top.tables(kind).iter().filter_map(read).collect()
+}
+
 fn read_material(top: &Reader<'_>, from_user: bool, faults: &Faults) -> Option<Material> {
     let head = top.table("material")?;
     let id = head.required_text(
@@ -166,31 +175,11 @@ fn read_material(top: &Reader<'_>, from_user: bool, faults: &Faults) -> Option<M
     head.text("formula");
     head.finish();
     let owner = Owner { from_user };
-    let values = top
-        .tables("value")
-        .iter()
-        .filter_map(|r| owner.value(r))
-        .collect();
-    let pairs = top
-        .tables("pair")
-        .iter()
-        .filter_map(|r| owner.pair(r))
-        .collect();
-    let calibrations = top
-        .tables("calibration")
-        .iter()
-        .filter_map(|r| owner.calibration(r))
-        .collect();
-    let laws = top
-        .tables("law")
-        .iter()
-        .filter_map(|r| owner.law(r, faults))
-        .collect();
-    let notes = top
-        .tables("note")
-        .iter()
-        .filter_map(|r| owner.note(r))
-        .collect();
+    let values = gather(top, "value", |r| owner.value(r));
+    let pairs = gather(top, "pair", |r| owner.pair(r));
+    let calibrations = gather(top, "calibration", |r| owner.calibration(r));
+    let laws = gather(top, "law", |r| owner.law(r, faults));
+    let notes = gather(top, "note", |r| owner.note(r));
     Some(Material {
         id: id?.value,
         name: name?.value,
@@ -204,7 +193,7 @@ fn read_material(top: &Reader<'_>, from_user: bool, faults: &Faults) -> Option<M
     })
 }
 
-fn read_interface(top: &Reader<'_>, from_user: bool, _faults: &Faults) -> Option<InterfaceEntry> {
+fn read_interface(top: &Reader<'_>, from_user: bool) -> Option<InterfaceEntry> {
     let head = top.table("interface")?;
     let id = head.required_text("id", "for example `id = \"iron-magnesia-silicon\"`");
     let name = head.required_text(
@@ -221,26 +210,10 @@ fn read_interface(top: &Reader<'_>, from_user: bool, _faults: &Faults) -> Option
         .map(|t| (t.value.clone(), t.place.clone()))
         .collect();
     let owner = Owner { from_user };
-    let contacts = top
-        .tables("contact")
-        .iter()
-        .filter_map(|r| owner.contact(r))
-        .collect();
-    let calibrations = top
-        .tables("calibration")
-        .iter()
-        .filter_map(|r| owner.calibration(r))
-        .collect();
-    let values = top
-        .tables("value")
-        .iter()
-        .filter_map(|r| owner.value(r))
-        .collect();
-    let notes = top
-        .tables("note")
-        .iter()
-        .filter_map(|r| owner.note(r))
-        .collect();
+    let contacts = gather(top, "contact", |r| owner.contact(r));
+    let calibrations = gather(top, "calibration", |r| owner.calibration(r));
+    let values = gather(top, "value", |r| owner.value(r));
+    let notes = gather(top, "note", |r| owner.note(r));
     Some(InterfaceEntry {
         id: id?.value,
         name: name?.value,

@@ -606,9 +606,14 @@ pub fn commons_of_interface(i: &InterfaceEntry) -> Vec<&Common> {
 }
 
 impl Library {
-    /// The shipped references, as BibTeX text.
+    /// Path and text of every shipped file, the references last: what a check of the whole library reads.
     #[must_use]
-    pub fn shipped_references() -> &'static str {
-        REFERENCES
+    pub fn shipped_texts() -> Vec<(String, String)> {
+        let references = ("materials/references.bib".to_owned(), REFERENCES.to_owned());
+        SHIPPED
+            .iter()
+            .map(|f| (f.path.to_owned(), f.text.to_owned()))
+            .chain([references])
+            .collect()
     }
 }

@@ -9,31 +9,17 @@ use std::io::Read as _;
 use std::path::{Path, PathBuf};
 use std::process::{Command, Stdio};
 
-use assert_cmd::cargo::{cargo_bin, cargo_bin_cmd};
+use assert_cmd::cargo::cargo_bin;
 use serde_json::Value;
 
 use injectance::materials::library::Library;
 
-struct Answer {
-    code: Option<i32>,
-    stdout: String,
-    stderr: String,
-}
+use crate::program::{self, Answer, program};
 
 fn run_at(folder: &Path, columns: &str, arguments: &[&str], stdin: &str) -> Answer {
-    let output = cargo_bin_cmd!("injectance")
-        .current_dir(folder)
-        .env("COLUMNS", columns)
-        .env_remove("NO_COLOR")
-        .args(arguments)
-        .write_stdin(stdin)
-        .output()
-        .unwrap();
-    Answer {
-        code: output.status.code(),
-        stdout: String::from_utf8(output.stdout).unwrap(),
-        stderr: String::from_utf8(output.stderr).unwrap(),
-    }
+    let mut command = program(folder, columns);
+    command.env_remove("NO_COLOR");
+    program::run(command, arguments, stdin.as_bytes())
 }
 
 fn here() -> &'static Path {

@@ -13,22 +13,10 @@ const LEAST_MATERIALS: usize = 18;
 const LEAST_INTERFACES: usize = 22;
 const LEAST_RECORDS: usize = 300;
 
-fn files() -> Vec<(String, String)> {
-    let mut files: Vec<(String, String)> = Library::shipped_files()
-        .iter()
-        .map(|f| (f.path.to_owned(), f.text.to_owned()))
-        .collect();
-    files.push((
-        "materials/references.bib".to_owned(),
-        Library::shipped_references().to_owned(),
-    ));
-    files
-}
-
 #[test]
 fn every_file_passes_the_check() {
     let faults = Faults::default();
-    let counted = check(&files(), None, false, &faults);
+    let counted = check(&Library::shipped_texts(), None, false, &faults);
     let found = faults.take();
     assert!(found.is_empty(), "{found:#?}");
     assert!(counted.materials >= LEAST_MATERIALS, "{counted:?}");

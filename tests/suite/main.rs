@@ -10,6 +10,7 @@ mod library;
 mod limits;
 mod no_panic;
 mod outside;
+mod program;
 mod published;
 mod quantities;
 mod readme;

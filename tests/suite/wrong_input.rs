@@ -7,7 +7,7 @@ use std::collections::BTreeSet;
 use std::fs;
 use std::path::{Path, PathBuf};
 
-use assert_cmd::cargo::cargo_bin_cmd;
+use crate::program::{self, Answer, program};
 
 const MARK: &str = "# <-";
 
@@ -15,26 +15,10 @@ fn home() -> PathBuf {
     Path::new(env!("CARGO_MANIFEST_DIR")).join("tests/suite/wrong_input")
 }
 
-struct Answer {
-    code: Option<i32>,
-    stdout: String,
-    stderr: String,
-}
-
 fn run(folder: &Path, arguments: &[&str], stdin: &[u8]) -> Answer {
-    let output = cargo_bin_cmd!("injectance")
-        .current_dir(folder)
-        .env("NO_COLOR", "1")
-        .env("COLUMNS", "100")
-        .args(arguments)
-        .write_stdin(stdin)
-        .output()
-        .unwrap();
-    Answer {
-        code: output.status.code(),
-        stdout: String::from_utf8(output.stdout).unwrap(),
-        stderr: String::from_utf8(output.stderr).unwrap(),
-    }
+    let mut command = program(folder, "100");
+    command.env("NO_COLOR", "1");
+    program::run(command, arguments, stdin)
 }
 
 fn sorted(folder: &Path) -> Vec<PathBuf> {

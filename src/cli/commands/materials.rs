@@ -74,15 +74,7 @@ pub fn show(a: &Show) -> Exit {
 pub fn check(a: &Check) -> Exit {
     let faults = Faults::default();
     let counted = if a.paths.is_empty() {
-        let mut files: Vec<(String, String)> = Library::shipped_files()
-            .iter()
-            .map(|f| (f.path.to_owned(), f.text.to_owned()))
-            .collect();
-        files.push((
-            "materials/references.bib".to_owned(),
-            Library::shipped_references().to_owned(),
-        ));
-        check_files(&files, None, false, &faults)
+        check_files(&Library::shipped_texts(), None, false, &faults)
     } else {
         let files: Vec<(String, String)> = a
             .paths

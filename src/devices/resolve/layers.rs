@@ -2,6 +2,7 @@
 
 use crate::designs::layers::LayerSpec;
 use crate::documents::fault::Wrong;
+use crate::documents::reader::Placed;
 use crate::materials::choose::{self, Chosen, Mark, NotChosen, Wanted, with_prior};
 use crate::materials::record::{Class, Material, PairRecord};
 use crate::models::ladder::Magnetization;
@@ -145,39 +146,39 @@ impl Work<'_> {
         );
     }
 
+    /// A property that the design states for a layer; it overrides the library where a material is named.
+    fn stated<Q: Measured>(
+        &mut self,
+        spec: &LayerSpec,
+        key: &str,
+        kind: &'static Kind,
+        value: &Placed<Reading>,
+    ) -> Slot<Q> {
+        let name = format!("{}.{key}", spec.path);
+        self.given(
+            name,
+            kind,
+            value,
+            spec.note.as_ref(),
+            spec.material.is_some(),
+        )
+    }
+
     pub(super) fn given_resistivity(&mut self, spec: &LayerSpec) -> Option<ResistivityPlan> {
-        let overrides = spec.material.is_some();
         if let Some(rho) = &spec.resistivity {
-            let name = format!("{}.resistivity", spec.path);
-            return Some(ResistivityPlan::Direct(self.given(
-                name,
-                &kind::RESISTIVITY,
-                rho,
-                spec.note.as_ref(),
-                overrides,
-            )));
+            let slot = self.stated(spec, "resistivity", &kind::RESISTIVITY, rho);
+            return Some(ResistivityPlan::Direct(slot));
         }
         let sigma = spec.conductivity.as_ref()?;
-        let name = format!("{}.conductivity", spec.path);
-        Some(ResistivityPlan::FromConductivity(self.given(
-            name,
-            &kind::CONDUCTIVITY,
-            sigma,
-            spec.note.as_ref(),
-            overrides,
-        )))
+        let slot = self.stated(spec, "conductivity", &kind::CONDUCTIVITY, sigma);
+        Some(ResistivityPlan::FromConductivity(slot))
     }
 
     pub(super) fn given_length(&mut self, spec: &LayerSpec) -> Option<LengthPlan> {
         let length = spec.spin_diffusion_length.as_ref()?;
-        let name = format!("{}.spin_diffusion_length", spec.path);
-        Some(LengthPlan::Direct(self.given(
-            name,
-            &kind::SPIN_DIFFUSION_LENGTH,
-            length,
-            spec.note.as_ref(),
-            spec.material.is_some(),
-        )))
+        let key = "spin_diffusion_length";
+        let slot = self.stated(spec, key, &kind::SPIN_DIFFUSION_LENGTH, length);
+        Some(LengthPlan::Direct(slot))
     }
 
     pub(super) fn thickness(&mut self, spec: &LayerSpec) -> Option<Slot<Thickness>> {
@@ -260,15 +261,10 @@ impl Work<'_> {
         };
         let given_rho = self.given_resistivity(spec);
         let given_length = self.given_length(spec);
-        let given_beta = spec.bulk_asymmetry.as_ref().map(|b| {
-            self.given(
-                format!("{}.bulk_asymmetry", spec.path),
-                &kind::BULK_ASYMMETRY,
-                b,
-                spec.note.as_ref(),
-                spec.material.is_some(),
-            )
-        });
+        let given_beta = spec
+            .bulk_asymmetry
+            .as_ref()
+            .map(|b| self.stated(spec, "bulk_asymmetry", &kind::BULK_ASYMMETRY, b));
         let named = Named {
             path: spec.path.clone(),
             label: material
