@@ -1,6 +1,5 @@
 //! Exit codes, one place.
 
-use std::io;
 use std::process::ExitCode;
 
 /// How a run ended.
@@ -24,15 +23,5 @@ impl From<Exit> for ExitCode {
             Exit::BadInput => 2,
             Exit::CannotWrite => 3,
         })
-    }
-}
-
-/// The exit after writing: a reader that went away is no failure.
-#[must_use]
-pub fn of_write(written: &io::Result<()>, otherwise: Exit) -> Exit {
-    match written {
-        Ok(()) => otherwise,
-        Err(e) if e.kind() == io::ErrorKind::BrokenPipe => otherwise,
-        Err(_) => Exit::CannotWrite,
     }
 }

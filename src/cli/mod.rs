@@ -9,8 +9,6 @@ mod terminal;
 
 pub use exit::Exit;
 
-use std::io::Write as _;
-
 use clap::Parser as _;
 use clap::error::ErrorKind;
 
@@ -28,17 +26,12 @@ pub fn run() -> Exit {
                     | ErrorKind::DisplayVersion
                     | ErrorKind::DisplayHelpOnMissingArgumentOrSubcommand
             );
-            let text = error.render();
-            let written = if asked {
-                std::io::stdout().write_all(text.to_string().as_bytes())
-            } else {
-                std::io::stderr().write_all(text.to_string().as_bytes())
-            };
-            return if asked {
-                exit::of_write(&written, Exit::Answered)
-            } else {
-                Exit::BadInput
-            };
+            let text = error.render().to_string();
+            if asked {
+                return terminal::print_text(&text, Exit::Answered);
+            }
+            terminal::complain(&text);
+            return Exit::BadInput;
         }
     };
     match arguments.command {

@@ -1,8 +1,8 @@
 //! Width and colour of the two streams.
 
-use std::io::{IsTerminal as _, Write as _};
+use std::io::{ErrorKind, IsTerminal as _, Write as _};
 
-use super::exit::{Exit, of_write};
+use super::exit::Exit;
 
 /// Width where nothing tells.
 const DEFAULT_WIDTH: usize = 80;
@@ -38,12 +38,19 @@ pub fn print(lines: &[String], otherwise: Exit) -> Exit {
     print_text(&text, otherwise)
 }
 
-/// Writes a text to standard output.
+/// Writes a text to standard output. A reader that went away is no failure; any other one is told.
 #[must_use]
 pub fn print_text(text: &str, otherwise: Exit) -> Exit {
     let mut out = std::io::stdout().lock();
     let written = out.write_all(text.as_bytes()).and_then(|()| out.flush());
-    of_write(&written, otherwise)
+    match written {
+        Ok(()) => otherwise,
+        Err(e) if e.kind() == ErrorKind::BrokenPipe => otherwise,
+        Err(e) => {
+            complain(&format!("  × standard output: cannot be written: {e}\n"));
+            Exit::CannotWrite
+        }
+    }
 }
 
 /// Writes a text to standard error; a failure there cannot be told anybody.

@@ -190,9 +190,13 @@ fn barriers(a: &Assessment, design: &Design, library: &Library, out: &mut Vec<Fi
         let Some(interface) = a.blueprint.interface(i) else {
             continue;
         };
-        let p = a.faces[0].get(i).map_or(0.0, |f| f.polarization.si());
-        let r_b = interface.spin_resistance.si();
-        let voltage = r_b * (1.0 - interface.asymmetry.si() * p) * j.si();
+        let Some(face) = a.faces[0].get(i) else {
+            continue;
+        };
+        let read = interface
+            .spin_resistance
+            .as_measured(interface.asymmetry, face.polarization);
+        let voltage = read.si() * j.si();
         if voltage > SMALL_BIAS {
             let path = path(a, Position::Element(i));
             let thickness = contact_spec(design, &path).and_then(|c| c.thickness.as_ref());

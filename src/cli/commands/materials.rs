@@ -90,8 +90,14 @@ pub fn check(a: &Check) -> Exit {
 }
 
 fn told(c: &Counted) -> String {
+    let of = |n: usize, one: &str| format!("{n} {one}{}", if n == 1 { "" } else { "s" });
     format!(
-        "{} files: {} materials, {} interfaces, {} records ({} read), {} references; no fault",
-        c.files, c.materials, c.interfaces, c.records, c.read, c.references
+        "{}: {}, {}, {} ({} read), {}; no fault",
+        of(c.files, "file"),
+        of(c.materials, "material"),
+        of(c.interfaces, "interface"),
+        of(c.records, "record"),
+        c.read,
+        of(c.references, "reference")
     )
 }

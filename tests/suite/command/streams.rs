@@ -242,3 +242,27 @@ why = "The wafer in use."
     assert_eq!(shown.code, Some(0), "{}", shown.stderr);
     assert!(shown.stdout.contains(&id));
 }
+
+/// A device that is always full, where the system has one.
+#[cfg(target_os = "linux")]
+#[test]
+fn a_full_disk_is_told_and_ends_with_three() {
+    for arguments in [&["findings"][..], &["--help"], &["new", "stack"]] {
+        let full = fs::OpenOptions::new()
+            .write(true)
+            .open("/dev/full")
+            .unwrap();
+        let output = Command::new(cargo_bin!("injectance"))
+            .args(arguments)
+            .stdout(Stdio::from(full))
+            .output()
+            .unwrap();
+        let told = String::from_utf8(output.stderr).unwrap();
+        assert_eq!(output.status.code(), Some(3), "{arguments:?}: {told}");
+        assert!(
+            told.starts_with("  × standard output: cannot be written: "),
+            "{arguments:?}: {told}"
+        );
+        assert_eq!(told.lines().count(), 1, "{arguments:?}: {told}");
+    }
+}
